@@ -1,0 +1,2 @@
+//! The binary `topheavy`.
+fn main() {}

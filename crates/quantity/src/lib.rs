@@ -1,0 +1,10 @@
+//! Values with their unit, tolerance and amplitude kind: parse, print, convert; and the vocabulary that the
+//! setup file and the physics share.
+//!
+//! Nothing here knows of files, spans in a file, or physics: a quantity is read from one piece of text and
+//! problems carry byte ranges *inside that text*.
+
+mod kind;
+pub mod vocabulary;
+
+pub use kind::{Amplitude, Kind, PressureReference};

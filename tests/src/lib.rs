@@ -1,0 +1,1 @@
+//! Helpers that the integration tests share.
