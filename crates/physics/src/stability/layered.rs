@@ -1,5 +1,7 @@
 //! A slab with the gas on either side of it, as the stability problem sees it.
 
+use super::failure::Failure;
+
 /// Horizontally uniform, incompressible, viscous layers between rigid no-slip walls, under
 /// g(t) = g + a cos ωt.
 #[derive(Debug, Clone, PartialEq)]
@@ -49,4 +51,57 @@ pub enum Response {
     Other,
     /// No oscillation to class (the drive is zero).
     None,
+}
+
+impl Layered {
+    /// Number of interfaces.
+    pub fn interfaces(&self) -> usize {
+        self.tensions.len()
+    }
+
+    /// Refuses what the equations cannot be asked.
+    pub(super) fn check(&self) -> Result<(), Failure> {
+        let refuse = |quantity, value| Err(Failure::Unusable { quantity, value });
+        if self.layers.len() < 2 || self.tensions.len() + 1 != self.layers.len() {
+            return refuse("number of layers", self.layers.len() as f64);
+        }
+        if !self.gravity.is_finite() {
+            return refuse("gravity", self.gravity);
+        }
+        let last = self.layers.len() - 1;
+        for (i, layer) in self.layers.iter().enumerate() {
+            let vacuum = layer.density == 0.0 && layer.viscosity == 0.0;
+            if !(layer.thickness > 0.0) || (layer.thickness.is_infinite() && i != 0 && i != last) {
+                return refuse("thickness", layer.thickness);
+            }
+            if !vacuum && !(layer.density > 0.0 && layer.density.is_finite()) {
+                return refuse("density", layer.density);
+            }
+            if !vacuum && !(layer.viscosity > 0.0 && layer.viscosity.is_finite()) {
+                return refuse("viscosity", layer.viscosity);
+            }
+        }
+        match self.tensions.iter().find(|tension| !(**tension >= 0.0 && tension.is_finite())) {
+            Some(tension) => refuse("surface tension", *tension),
+            None => Ok(()),
+        }
+    }
+
+    /// 2νk² of the densest layer, 1/s: the scale of bulk damping.
+    pub(super) fn viscous_decay(&self, wavenumber: f64) -> f64 {
+        let densest = self.layers.iter().max_by(|a, b| a.density.total_cmp(&b.density));
+        densest.map_or(0.0, |layer| 2.0 * layer.viscosity / layer.density * wavenumber * wavenumber)
+    }
+}
+
+impl Forcing {
+    pub(super) fn check(&self) -> Result<(), Failure> {
+        if !(self.omega > 0.0 && self.omega.is_finite()) {
+            return Err(Failure::Unusable { quantity: "frequency", value: self.omega });
+        }
+        if !(self.acceleration >= 0.0 && self.acceleration.is_finite()) {
+            return Err(Failure::Unusable { quantity: "acceleration", value: self.acceleration });
+        }
+        Ok(())
+    }
 }

@@ -1,3 +1,42 @@
 //! Stability of a slab under vertical vibration: full linearised Navier–Stokes, every Floquet exponent.
 
+mod count;
+mod exponent;
+mod face_forces;
+mod failure;
+mod hill;
 pub mod layered;
+mod neutral;
+mod stiffness;
+mod unforced;
+
+pub use exponent::{Growth, growth};
+pub use failure::Failure;
+pub use neutral::{Neutral, neutral};
+
+/// Runs an expression with the number of interfaces as a constant where it is small, so that the inner loops work
+/// on matrices of fixed size.
+macro_rules! with_size {
+    ($layered:expr, $size:ident => $body:expr) => {
+        match $layered.interfaces() {
+            1 => {
+                let $size = nalgebra::Const::<1>;
+                $body
+            }
+            2 => {
+                let $size = nalgebra::Const::<2>;
+                $body
+            }
+            3 => {
+                let $size = nalgebra::Const::<3>;
+                $body
+            }
+            n => {
+                let $size = nalgebra::Dyn(n);
+                $body
+            }
+        }
+    };
+}
+use with_size;
+#[cfg(test)] mod tests_first;
