@@ -159,22 +159,23 @@ where
     fn neutral_on(&self, y: f64, up_to: f64) -> Vec<f64> {
         let s = Complex64::new(0.0, y);
         let harmonics = self.harmonics(s);
-        let coupling = self.neutral_matrix(&harmonics);
-        let Some(schur) = nalgebra::linalg::Schur::try_new(coupling, 1e-14, 10_000) else { return Vec::new() };
-        let eigenvalues = schur.complex_eigenvalues();
-        let mut found: Vec<f64> = eigenvalues
-            .iter()
-            .filter(|b| b.re > 0.5 / up_to && b.im.abs() < 1e-6 * b.norm())
-            .map(|b| 1.0 / b.re)
-            .collect();
-        found.sort_by(f64::total_cmp);
+        let found = real_positive_inverses(self.neutral_matrix(&harmonics), up_to);
         let value = |a: f64| self.determinant(&harmonics, a).re;
-        found
-            .into_iter()
-            .map(|a| polish(value, a))
-            .filter(|a| *a <= up_to)
-            .collect()
+        found.into_iter().map(|a| polish(value, a)).filter(|a| *a <= up_to).collect()
     }
+}
+
+/// 1/b of the real positive eigenvalues b of a matrix with 1/b ≤ 2·`up_to`, ascending.
+fn real_positive_inverses(matrix: nalgebra::DMatrix<Complex64>, up_to: f64) -> Vec<f64> {
+    let schur = nalgebra::linalg::Schur::try_new(matrix, 1e-14, 10_000);
+    let Some(eigenvalues) = schur.and_then(|schur| schur.eigenvalues()) else { return Vec::new() };
+    let mut found: Vec<f64> = eigenvalues
+        .iter()
+        .filter(|b| b.re > 0.5 / up_to && b.im.abs() < 1e-6 * b.norm())
+        .map(|b| 1.0 / b.re)
+        .collect();
+    found.sort_by(f64::total_cmp);
+    found
 }
 
 /// A simple real root near `a` by the secant method, or `a` itself where that does not settle nearby.
