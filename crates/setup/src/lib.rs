@@ -5,4 +5,5 @@
 
 pub mod finding;
 pub mod resolved;
+pub mod rule;
 pub mod tree;

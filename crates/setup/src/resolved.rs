@@ -57,9 +57,44 @@ pub struct Setup {
     pub not_looked_at: Vec<NotLookedAt>,
     /// Every default in force.
     pub defaults: Vec<DefaultInForce>,
-    /// `true` when a value that the physics needs is written but could not be read; physics that depends on it
-    /// is not run.
+    /// Places whose value is written but could not be read, in the order of their names: physics that depends on
+    /// one of them is not run, and nobody says that it is missing. `layer` alone: a `[[layer]]` header was lost, so
+    /// the stack is not complete; a section such as `cell` alone: nothing about it is known.
     pub unreadable_places: Vec<String>,
+    /// What ± means in this file.
+    pub tolerance_meaning: ToleranceMeaning,
+    /// Places that hold an open value (`"?"`), with its bounds in SI; they are in `unreadable_places` too.
+    pub open_values: Vec<OpenPlace>,
+}
+
+/// What ± means in a file.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default)]
+pub enum ToleranceMeaning {
+    /// One standard uncertainty.
+    #[default]
+    Standard,
+    /// Half width of a rectangular distribution.
+    Limits,
+    /// Expanded uncertainty, coverage factor 2.
+    Expanded,
+}
+
+/// A value that the tool is asked for.
+#[derive(Debug, Clone, PartialEq)]
+pub struct OpenPlace {
+    /// Where it stands.
+    pub place: String,
+    /// SI, as stated; `None`: without bounds.
+    pub bounds: Option<(f64, f64)>,
+}
+
+impl Setup {
+    /// Whether the value of a place, or the section it stands in, is written but could not be read.
+    pub fn is_unreadable(&self, place: &str) -> bool {
+        self.unreadable_places.iter().any(|lost| {
+            place == lost || place.strip_prefix(lost.as_str()).is_some_and(|rest| rest.starts_with('.'))
+        })
+    }
 }
 
 /// `[ambient]`
