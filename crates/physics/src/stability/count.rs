@@ -50,6 +50,8 @@ pub(super) struct Count {
     pub right: usize,
     /// Local minima of |F| along the line, (y, |F|), smallest first: where exponents are near.
     pub near: Vec<(f64, f64)>,
+    /// Estimated distance of the nearest exponent from the line, 1/s: |F| over its slope along the line.
+    pub distance: f64,
     /// F on Im s = 0 and on Im s = ω/2, real.
     pub ends: [f64; 2],
 }
@@ -61,7 +63,7 @@ where
     /// The line Re s = `sigma` ≥ 0, sampled on a coarse mesh and around each of the `hints` (exponents without
     /// drive, any strip).
     pub fn new(hill: &Hill<D>, sigma: f64, hints: &[Complex64]) -> Self {
-        let omega = hill.omega;
+        let (omega, sigma) = (hill.omega, sigma.max(hill.axis));
         let mut ys: Vec<f64> = (0..=COARSE).map(|i| 0.5 * omega * i as f64 / COARSE as f64).collect();
         for hint in hints {
             let folded = fold(hint.im, omega);
@@ -69,7 +71,9 @@ where
             ys.push(folded);
             let mut step = 0.5 * width;
             while step < 0.5 * omega / COARSE as f64 {
-                ys.extend([folded - step, folded + step].into_iter().filter(|y| *y > 0.0 && *y < 0.5 * omega));
+                ys.extend(
+                    [folded - step, folded + step].into_iter().filter(|y| *y > 0.0 && *y < 0.5 * omega),
+                );
                 step *= 2.0;
             }
         }
@@ -105,7 +109,8 @@ where
                 i += 2;
             }
         }
-        let turn: f64 = values.windows(2).map(|pair| (pair[1] / pair[0]).arg()).sum::<f64>() / std::f64::consts::PI;
+        let turn: f64 =
+            values.windows(2).map(|pair| (pair[1] / pair[0]).arg()).sum::<f64>() / std::f64::consts::PI;
         let right = self.poles_right as f64 - turn;
         // The truncated determinant is real at the ends only to the truncation's accuracy.
         if !right.is_finite() || (right - right.round()).abs() > 0.1 || right.round() < 0.0 {
@@ -117,7 +122,11 @@ where
             });
         }
         let ends = [values[0].re, values[values.len() - 1].re];
-        Ok(Count { right: right.round() as usize, near: self.minima(&values), ends })
+        let near = self.minima(&values);
+        let distance =
+            near.iter().map(|&(i, size)| size / self.slope(&values, i)).fold(f64::INFINITY, f64::min);
+        let near = near.into_iter().map(|(i, size)| (self.samples[i].0, size)).collect();
+        Ok(Count { right: right.round() as usize, near, distance, ends })
     }
 
     /// Whether the piece from i to i + 1 is so flat already that no sample inside can matter: judged with the
@@ -126,7 +135,8 @@ where
         let y = |j: usize| self.samples[j].0;
         let width = y(i + 1) - y(i);
         let left = i > 0 && y(i) - y(i - 1) >= 0.45 * width && y(i) - y(i - 1) <= 2.1 * width;
-        let right = i + 2 < values.len() && y(i + 2) - y(i + 1) >= 0.45 * width && y(i + 2) - y(i + 1) <= 2.1 * width;
+        let right =
+            i + 2 < values.len() && y(i + 2) - y(i + 1) >= 0.45 * width && y(i + 2) - y(i + 1) <= 2.1 * width;
         let close = |a: Complex64, b: Complex64| (b - a).norm() < STRAIGHT * a.norm().min(b.norm());
         close(values[i], values[i + 1])
             && (!left || close(values[i - 1], values[i]))
@@ -134,12 +144,20 @@ where
             && (left || right)
     }
 
-    fn minima(&self, values: &[Complex64]) -> Vec<(f64, f64)> {
+    /// |dF/dy| at a sample, from its neighbours.
+    fn slope(&self, values: &[Complex64], i: usize) -> f64 {
+        let (before, after) = (i.saturating_sub(1), (i + 1).min(values.len() - 1));
+        let rise = (values[after] - values[before]).norm() / (self.samples[after].0 - self.samples[before].0);
+        rise.max(f64::MIN_POSITIVE)
+    }
+
+    /// Local minima of |F|, (index, |F|), smallest first.
+    fn minima(&self, values: &[Complex64]) -> Vec<(usize, f64)> {
         let n = values.len();
         let size = |i: usize| values[i].norm();
-        let mut minima: Vec<(f64, f64)> = (0..n)
+        let mut minima: Vec<(usize, f64)> = (0..n)
             .filter(|&i| (i == 0 || size(i) <= size(i - 1)) && (i + 1 == n || size(i) < size(i + 1)))
-            .map(|i| (self.samples[i].0, size(i)))
+            .map(|i| (i, size(i)))
             .collect();
         minima.sort_by(|a, b| a.1.total_cmp(&b.1));
         minima

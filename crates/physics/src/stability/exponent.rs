@@ -102,7 +102,8 @@ where
     let references = [hill.reference(false), hill.reference(true)];
     let mut search = Search { hill, a, references: &references, found: Vec::new() };
     let best = if count.right > 0 {
-        let mut starts: Vec<Complex64> = count.near.iter().take(6).map(|&(y, _)| Complex64::new(0.0, y)).collect();
+        let mut starts: Vec<Complex64> =
+            count.near.iter().take(6).map(|&(y, _)| Complex64::new(0.0, y)).collect();
         starts.extend(hints.iter().map(|hint| Complex64::new(hint.re, fold(hint.im, omega))));
         match search.all_growing(&starts, count.right, cancel)? {
             Some(exponent) => Some(exponent),
@@ -114,7 +115,12 @@ where
         search.least_damped(&starts)
     };
     let Some(exponent) = best else {
-        return Err(Failure::ExponentLost { wavenumber: k, acceleration: a, above: f64::NEG_INFINITY, below: 0.0 });
+        return Err(Failure::ExponentLost {
+            wavenumber: k,
+            acceleration: a,
+            above: f64::NEG_INFINITY,
+            below: 0.0,
+        });
     };
     Ok(Growth {
         rate: exponent.re,
@@ -167,7 +173,12 @@ where
             below = above;
             above *= 2.0;
             if above > 1e12 {
-                return Err(Failure::ExponentLost { wavenumber: k, acceleration: 0.0, above: below, below: above });
+                return Err(Failure::ExponentLost {
+                    wavenumber: k,
+                    acceleration: 0.0,
+                    above: below,
+                    below: above,
+                });
             }
         }
         for _ in 0..200 {
@@ -287,7 +298,7 @@ where
                     return Err(Failure::Cancelled);
                 }
                 if let Some(root) = self.next(*start)
-                    && root.re > 0.0
+                    && root.re > self.hill.axis
                 {
                     counted += self.multiplicity(root);
                     if counted >= wanted {
@@ -378,7 +389,12 @@ where
     }
 
     /// Brackets the largest real part by counts on lines ever closer to it, then locates the exponent on the last.
-    fn bracketed(&mut self, hints: &[Complex64], k: f64, cancel: &dyn Fn() -> bool) -> Result<Complex64, Failure> {
+    fn bracketed(
+        &mut self,
+        hints: &[Complex64],
+        k: f64,
+        cancel: &dyn Fn() -> bool,
+    ) -> Result<Complex64, Failure> {
         let (hill, a) = (self.hill, self.a);
         let count_at = |sigma: f64| -> Result<super::count::Count, Failure> {
             if cancel() {
@@ -392,14 +408,23 @@ where
             below = above;
             above *= 2.0;
             if above > 1e6 * hill.omega {
-                return Err(Failure::ExponentLost { wavenumber: k, acceleration: a, above: below, below: above });
+                return Err(Failure::ExponentLost {
+                    wavenumber: k,
+                    acceleration: a,
+                    above: below,
+                    below: above,
+                });
             }
         }
         self.found.clear();
         for _ in 0..60 {
             let middle = if below > 0.0 { (below * above).sqrt() } else { 0.1 * above };
             let count = count_at(middle)?;
-            if count.right > 0 { below = middle } else { above = middle }
+            if count.right > 0 {
+                below = middle
+            } else {
+                above = middle
+            }
             let starts: Vec<_> = count.near.iter().take(3).map(|&(y, _)| Complex64::new(middle, y)).collect();
             for start in starts {
                 if let Some(root) = self.next(start)

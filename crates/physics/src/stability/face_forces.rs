@@ -155,3 +155,119 @@ fn thin_odd(qh: Complex64, kh: f64, half: f64) -> Complex64 {
     }
     sum * half
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use nalgebra::{Matrix4, Vector4};
+
+    fn layer(thickness: f64) -> FluidLayer {
+        FluidLayer { density: 970.0, viscosity: 0.3, thickness }
+    }
+
+    fn close(a: Complex64, b: Complex64, tolerance: f64, what: &str) {
+        assert!((a - b).norm() <= tolerance * b.norm().max(1e-300), "{what}: {a} against {b}");
+    }
+
+    /// The same coefficients from the four exponentials and a 4 × 4 solve, without splitting into even and odd.
+    fn direct(layer: &FluidLayer, k: f64, lambda: Complex64) -> FaceForces {
+        let (mu, h) = (layer.viscosity, layer.thickness);
+        let q = (lambda * (layer.density / mu) + k * k).sqrt();
+        let rates = [Complex64::new(k, 0.0), Complex64::new(-k, 0.0), q, -q];
+        let derivative =
+            |z: f64, order: i32| Vector4::from_fn(|i, _| rates[i].powi(order) * (rates[i] * z).exp());
+        let mut conditions = Matrix4::<Complex64>::zeros();
+        for (row, (z, order)) in
+            [(h / 2.0, 0), (h / 2.0, 1), (-h / 2.0, 0), (-h / 2.0, 1)].into_iter().enumerate()
+        {
+            conditions.set_row(row, &derivative(z, order).transpose());
+        }
+        let inverse = conditions.try_inverse().unwrap();
+        let top = h / 2.0;
+        let normal = derivative(top, 1) * (lambda * layer.density + 3.0 * mu * k * k)
+            - derivative(top, 3) * Complex64::from(mu);
+        let tangential =
+            (derivative(top, 2) + derivative(top, 0) * Complex64::from(k * k)) * Complex64::from(mu);
+        let (n, t) = (normal.transpose() * inverse, tangential.transpose() * inverse);
+        // Columns: W top, V top, W bottom, V bottom.
+        FaceForces { near_n: n[0], near_a: n[1], near_b: t[1], far_n: -n[2], far_a: n[3], far_b: t[3] }
+    }
+
+    #[test]
+    fn agrees_with_a_direct_solution_by_four_exponentials() {
+        for (k, h) in [(60.0, 0.02), (300.0, 0.015), (500.0, 0.003), (120.0, 0.05)] {
+            for lambda in [
+                Complex64::new(3.0, 40.0),
+                Complex64::new(0.0, 900.0),
+                Complex64::new(50.0, 0.0),
+                Complex64::new(-1.0, 20.0),
+            ] {
+                let (ours, theirs) =
+                    (LayerAtWavenumber::new(&layer(h), k).forces(lambda), direct(&layer(h), k, lambda));
+                for (a, b, what) in [
+                    (ours.near_n, theirs.near_n, "near n"),
+                    (ours.near_a, theirs.near_a, "near a"),
+                    (ours.near_b, theirs.near_b, "near b"),
+                ] {
+                    close(a, b, 1e-8, what);
+                }
+                // The far coefficients are small against the near ones in thick layers: compare on their scale.
+                for (a, b, scale, what) in [
+                    (ours.far_n, theirs.far_n, theirs.near_n, "far n"),
+                    (ours.far_a, theirs.far_a, theirs.near_a, "far a"),
+                    (ours.far_b, theirs.far_b, theirs.near_b, "far b"),
+                ] {
+                    assert!((a - b).norm() < 1e-8 * scale.norm(), "{what}: {a} against {b}");
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn thin_layers_lose_no_digits() {
+        // Across the switch from closed form to series the coefficients are continuous.
+        let k = 100.0;
+        let lambda = Complex64::new(2.0, 5.0);
+        let q = ((lambda * 970.0 / 0.3) + k * k).sqrt().norm();
+        let h = 2.0 * 0.5 / q;
+        let (below, above) = (
+            LayerAtWavenumber::new(&layer(h * (1.0 - 1e-12)), k).forces(lambda),
+            LayerAtWavenumber::new(&layer(h * (1.0 + 1e-12)), k).forces(lambda),
+        );
+        close(below.near_n, above.near_n, 1e-10, "near n");
+        close(below.near_b, above.near_b, 1e-10, "near b");
+        // Lubrication: a thin gap between a wall and a face resists with 12 μ/(k² h³) per unit of W, times k²
+        // (Reynolds 1886; any text on lubrication). The leading correction is of relative order (kh)².
+        let h = 1e-4;
+        let thin = LayerAtWavenumber::new(&layer(h), 10.0).forces(Complex64::new(0.0, 0.0));
+        // One face moves with W, the other rests; both are free of slip in x, so V = 0 at both.
+        close(thin.near_n, Complex64::new(12.0 * 0.3 / h.powi(3), 0.0), 1e-5, "lubrication");
+    }
+
+    #[test]
+    fn stokes_flow_is_the_limit_of_vanishing_frequency() {
+        for h in [0.0005, 0.01, 0.2, f64::INFINITY] {
+            let at = LayerAtWavenumber::new(&layer(h), 150.0);
+            let (still, slow) = (at.forces(Complex64::new(0.0, 0.0)), at.forces(Complex64::new(0.0, 1e-7)));
+            close(slow.near_n, still.near_n, 1e-6, "near n");
+            close(slow.near_b, still.near_b, 1e-6, "near b");
+            // The cross coefficient vanishes in deep fluid: compare on the scale of b k.
+            assert!((slow.near_a - still.near_a).norm() < 1e-6 * (still.near_b * 150.0).norm());
+        }
+        // Deep Stokes flow: a free face is pushed back with 2μk·k² per unit of W (tangential stress eliminated).
+        let deep = LayerAtWavenumber::new(&layer(f64::INFINITY), 150.0).forces(Complex64::new(0.0, 0.0));
+        let free = deep.near_n - deep.near_a * deep.near_a / deep.near_b;
+        close(free, Complex64::new(2.0 * 0.3 * 150f64.powi(3), 0.0), 1e-12, "deep Stokes flow");
+    }
+
+    #[test]
+    fn inertia_is_the_limit_of_vanishing_viscosity() {
+        let thin = FluidLayer { density: 970.0, viscosity: 1e-9, thickness: 0.01 };
+        let at = LayerAtWavenumber::new(&thin, 100.0);
+        let lambda = Complex64::new(0.0, 300.0);
+        let f = at.forces(lambda);
+        let free = f.near_n - f.near_a * f.near_a / f.near_b;
+        close(free, lambda * at.inertia().0, 1e-4, "inviscid limit");
+        assert!((at.inertia().0 - 970.0 * 100.0 / 1f64.tanh()).abs() < 1e-9 * 970.0 * 100.0);
+    }
+}

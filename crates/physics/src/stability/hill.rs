@@ -49,6 +49,9 @@ where
     pub omega: f64,
     /// Harmonics kept on either side.
     pub reach: usize,
+    /// Where the axis is taken, 1/s: 0, or a hair to the right of it where an interface has no static stiffness at
+    /// all (equal fluids), whose neutral exponent at s = 0 would make F indefinite there.
+    pub axis: f64,
 }
 
 impl<D: Size> Hill<D>
@@ -58,7 +61,10 @@ where
     /// `up_to` is the largest acceleration that will be asked for; it sets how many harmonics are kept: the
     /// neglected ones change a pivot by less than `accuracy` relative.
     pub fn new(stiffness: Stiffness<D>, omega: f64, up_to: f64, accuracy: f64) -> Self {
-        let mut hill = Hill { stiffness, omega, reach: MOST_HARMONICS };
+        let stiffest = stiffness.statics.amax();
+        let idle = stiffness.statics.iter().any(|k| k.abs() <= 1e-13 * stiffest);
+        let mut hill =
+            Hill { stiffness, omega, reach: MOST_HARMONICS, axis: if idle { 1e-9 * omega } else { 0.0 } };
         let mut influence = 1.0;
         for n in 1..=MOST_HARMONICS {
             let block = hill.stiffness.at(Complex64::new(0.0, (n as f64 - 0.5) * omega));
@@ -97,6 +103,16 @@ where
         value
     }
 
+    /// F(0), which is real: its sign tells the parity of the number of real growing exponents.
+    pub fn on_real_line(&self, a: f64) -> f64 {
+        self.at(Complex64::new(self.axis, 0.0), a).re
+    }
+
+    /// F(s) for the acceleration a.
+    pub fn at(&self, s: Complex64, a: f64) -> Complex64 {
+        self.determinant(&self.harmonics(s), a)
+    }
+
     /// Π det S_n(s) over fixed reference sizes: vanishes where F does, but has no poles at the exponents without
     /// drive. For hunting zeros; `upper_half` says which set of harmonics to use throughout the hunt.
     pub fn characteristic(&self, s: Complex64, a: f64, reference: &Reference) -> Complex64 {
@@ -119,7 +135,8 @@ where
         let mut pivots = vec![None; harmonics.blocks.len()];
         self.eliminate(&harmonics, a, |n, pivot| pivots[n] = Some(pivot.clone()));
         let centre = harmonics.centre;
-        let mut mode = vec![OVector::zeros_generic(self.stiffness.size(), nalgebra::Const::<1>); pivots.len()];
+        let mut mode =
+            vec![OVector::zeros_generic(self.stiffness.size(), nalgebra::Const::<1>); pivots.len()];
         if let Some(pivot) = &pivots[centre] {
             mode[centre] = null_vector(pivot);
         }
@@ -156,7 +173,8 @@ where
                 }
                 for r in 0..n {
                     for c in 0..n {
-                        matrix[(at * n + r, neighbour * n + c)] = inverse[(r, c)] * (-0.5 * self.stiffness.weight[c]);
+                        matrix[(at * n + r, neighbour * n + c)] =
+                            inverse[(r, c)] * (-0.5 * self.stiffness.weight[c]);
                     }
                 }
             }
@@ -164,18 +182,14 @@ where
         matrix
     }
 
-    /// Gain of the harmonics at a point of the axis: the largest ‖M⁻¹G‖ (Frobenius) of the blocks n and n + 1 as a
-    /// product, by which stability can be certified without following anything (see `screen`).
-    pub fn coupling(&self, y: f64) -> f64 {
-        let gain = |lambda: f64| {
-            self.stiffness.at(Complex64::new(0.0, lambda)).try_inverse().map_or(f64::INFINITY, |mut inverse| {
-                for (i, mut column) in inverse.column_iter_mut().enumerate() {
-                    column *= Complex64::new(self.stiffness.weight[i], 0.0);
-                }
-                inverse.norm()
-            })
-        };
-        gain(y) * gain(y - self.omega)
+    /// ‖M(iy)⁻¹G‖ (Frobenius): how far a harmonic follows a unit of extra gravity (see `screen`).
+    pub fn gain(&self, y: f64) -> f64 {
+        self.stiffness.at(Complex64::new(0.0, y)).try_inverse().map_or(f64::INFINITY, |mut inverse| {
+            for (i, mut column) in inverse.column_iter_mut().enumerate() {
+                column *= Complex64::new(self.stiffness.weight[i], 0.0);
+            }
+            inverse.norm()
+        })
     }
 
     /// Runs the elimination and hands out each pivot with its index, the centre last.
@@ -183,7 +197,8 @@ where
         let quarter = Complex64::new(a * a / 4.0, 0.0);
         let weight = &self.stiffness.weight;
         let term = |s: &Square<D>| -> Square<D> {
-            let mut inverse = s.clone().try_inverse().unwrap_or_else(|| s.map(|_| Complex64::new(f64::MAX.sqrt(), 0.0)));
+            let mut inverse =
+                s.clone().try_inverse().unwrap_or_else(|| s.map(|_| Complex64::new(f64::MAX.sqrt(), 0.0)));
             for c in 0..inverse.ncols() {
                 for r in 0..inverse.nrows() {
                     inverse[(r, c)] *= quarter * (weight[r] * weight[c]);

@@ -68,16 +68,19 @@ impl Layered {
         if !self.gravity.is_finite() {
             return refuse("gravity", self.gravity);
         }
+        let usable = |value: f64| value > 0.0 && value.is_finite();
         let last = self.layers.len() - 1;
         for (i, layer) in self.layers.iter().enumerate() {
             let vacuum = layer.density == 0.0 && layer.viscosity == 0.0;
-            if !(layer.thickness > 0.0) || (layer.thickness.is_infinite() && i != 0 && i != last) {
+            let inner = i != 0 && i != last;
+            if layer.thickness.is_nan() || layer.thickness <= 0.0 || (layer.thickness.is_infinite() && inner)
+            {
                 return refuse("thickness", layer.thickness);
             }
-            if !vacuum && !(layer.density > 0.0 && layer.density.is_finite()) {
+            if !(vacuum || usable(layer.density)) {
                 return refuse("density", layer.density);
             }
-            if !vacuum && !(layer.viscosity > 0.0 && layer.viscosity.is_finite()) {
+            if !(vacuum || usable(layer.viscosity)) {
                 return refuse("viscosity", layer.viscosity);
             }
         }

@@ -4,15 +4,22 @@ mod count;
 mod exponent;
 mod face_forces;
 mod failure;
+mod from_stack;
 mod hill;
 pub mod layered;
+mod modes;
 mod neutral;
+mod screen;
+mod slab;
 mod stiffness;
 mod unforced;
 
 pub use exponent::{Growth, growth};
 pub use failure::Failure;
+pub use from_stack::layered;
+pub use modes::{CellMode, cell_modes};
 pub use neutral::{Neutral, neutral};
+pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab};
 
 /// Runs an expression with the number of interfaces as a constant where it is small, so that the inner loops work
 /// on matrices of fixed size.
@@ -39,4 +46,5 @@ macro_rules! with_size {
     };
 }
 use with_size;
-#[cfg(test)] mod tests_first;
+#[cfg(test)]
+mod tests;

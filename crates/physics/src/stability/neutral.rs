@@ -90,7 +90,9 @@ where
             let to = next.min(inside_high);
             let there = line.count(&hill, to, k)?;
             if there.right != here.right {
-                neutral.other.push(change(&hill, &mut line, (at, &here), (to, &there), k)?.acceleration);
+                let start = here.right;
+                let ends = ((at, here), (to, there.clone()));
+                neutral.other.push(border(&hill, &mut line, ends.0, ends.1, k, |n| n == start)?.acceleration);
             }
             at = to;
             here = there;
@@ -111,32 +113,30 @@ pub(super) struct Change {
     pub frequency: f64,
 }
 
-/// Bisects a change of the count between two accelerations; where several lie between, the lowest kind of change
-/// that separates `low`'s count from another.
-pub(super) fn change<D: Size>(
+/// Bisects the border between two accelerations of which the lower one satisfies `is_low` (judged by the number of
+/// growing exponents) and the upper one does not.
+pub(super) fn border<D: Size>(
     hill: &Hill<D>,
     line: &mut Line<D>,
-    low: (f64, &Count),
-    high: (f64, &Count),
+    low: (f64, Count),
+    high: (f64, Count),
     k: f64,
+    is_low: impl Fn(usize) -> bool,
 ) -> Result<Change, Failure>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    let (mut below, mut above) = (low.0, high.0);
-    let (mut under, mut over) = (low.1.clone(), high.1.clone());
+    let ((mut below, mut under), (mut above, mut over)) = (low, high);
     while above - below > ACCURACY * above {
         let middle = 0.5 * (below + above);
         if middle <= below || middle >= above {
             break;
         }
         let count = line.count(hill, middle, k)?;
-        if count.right == under.right {
-            below = middle;
-            under = count;
+        if is_low(count.right) {
+            (below, under) = (middle, count);
         } else {
-            above = middle;
-            over = count;
+            (above, over) = (middle, count);
         }
     }
     let crosses = |end: usize| under.ends[end] * over.ends[end] < 0.0;
@@ -145,8 +145,7 @@ where
     } else if crosses(1) {
         (Response::Subharmonic, 0.5 * hill.omega)
     } else {
-        let nearest = |count: &Count| count.near.first().map_or(0.0, |near| near.0);
-        (Response::Other, nearest(&over))
+        (Response::Other, over.near.first().map_or(0.0, |near| near.0))
     };
     Ok(Change { acceleration: 0.5 * (below + above), response, frequency })
 }
@@ -157,7 +156,7 @@ where
 {
     /// The real positive eigenvalues a ≤ `up_to` of the neutral problem at s = iy, y = 0 or ω/2, ascending.
     fn neutral_on(&self, y: f64, up_to: f64) -> Vec<f64> {
-        let s = Complex64::new(0.0, y);
+        let s = Complex64::new(self.axis, y);
         let harmonics = self.harmonics(s);
         let found = real_positive_inverses(self.neutral_matrix(&harmonics), up_to);
         let value = |a: f64| self.determinant(&harmonics, a).re;
@@ -188,7 +187,7 @@ fn polish(f: impl Fn(f64) -> f64, a: f64) -> f64 {
             break;
         }
         let x = x1 - f1 * (x1 - x0) / slope;
-        if !((x - a).abs() < 1e-4 * a) {
+        if x.is_nan() || (x - a).abs() > 1e-4 * a {
             return a;
         }
         (x0, f0) = (x1, f1);
