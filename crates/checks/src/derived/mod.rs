@@ -1,0 +1,303 @@
+//! What was computed for one setup. SI, peak amplitudes, e^{+iωt}, layers and slabs top first, no spans.
+
+use std::sync::Arc;
+
+pub use physics::stability::layered::Response;
+pub use physics::stability::{Mechanism, Mode};
+use physics::stack::Stack;
+use quantity::vocabulary::{Effect, Phase};
+pub use setup::resolved::{DefaultInForce, NotLookedAt};
+
+/// Everything that was computed for one setup.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Derived {
+    /// The drive in its three quantities; `None` when the cell is at rest or the drive is not known.
+    pub drive: Option<DriveState>,
+    /// The complete stack; `None` when a value that it needs is missing: then only the lists at the end are filled.
+    pub stack: Option<Arc<Stack>>,
+    /// One per layer of the stack, top first.
+    pub layers: Vec<LayerState>,
+    /// Liquid slabs, top first.
+    pub slabs: Vec<Slab>,
+    /// Gas layers that act as springs, top first.
+    pub cushions: Vec<Cushion>,
+    /// Natural frequencies of slabs on cushions, lossless, ascending, Hz.
+    pub natural_frequencies: Vec<f64>,
+    /// What the cell may be driven with.
+    pub window: Option<DriveWindow>,
+    /// Defaults in force, each with its source.
+    pub defaults: Vec<DefaultInForce>,
+    /// What the file asks for and was not looked at.
+    pub not_looked_at: Vec<NotLookedAt>,
+    /// Effects that the file switches off.
+    pub effects_off: Vec<Effect>,
+}
+
+/// The drive of the cell in its three quantities, peak.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct DriveState {
+    /// Hz
+    pub frequency: f64,
+    /// m/s²
+    pub acceleration: f64,
+    /// m/s
+    pub velocity: f64,
+    /// m
+    pub displacement: f64,
+}
+
+/// One layer as the physics has it.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LayerState {
+    /// Its name.
+    pub name: String,
+    /// Its place, `layer.oil`.
+    pub place: String,
+    /// Gas or liquid.
+    pub phase: Phase,
+    /// What it is made of, in words: `silicone oil, 1000 mm²/s at 25 °C`.
+    pub made_of: String,
+    /// At operating pressure, m.
+    pub thickness: f64,
+    /// K
+    pub temperature: f64,
+    /// Mean static pressure, Pa absolute.
+    pub pressure: f64,
+    /// kg/m³
+    pub density: f64,
+    /// Dynamic viscosity, Pa s.
+    pub viscosity: f64,
+    /// Against gas, N/m; `None` for a gas.
+    pub surface_tension: Option<f64>,
+    /// Where density, viscosity and tension come from.
+    pub sources: Vec<String>,
+}
+
+/// A slab: liquid layers in contact.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Slab {
+    /// The names of its layers joined by ` + `.
+    pub name: String,
+    /// Indices of its layers in the stack.
+    pub range: std::ops::Range<usize>,
+    /// Names of its layers, top first.
+    pub layers: Vec<String>,
+    /// Where it sits.
+    pub seat: Seat,
+    /// kg/m²
+    pub mass_per_area: f64,
+    /// How it moves; `None` when the cell is at rest.
+    pub motion: Option<Motion>,
+    /// Its interfaces, top first; indices of `Face` elsewhere point here.
+    pub faces: Vec<Face>,
+    /// Every mode of the cell judged; `None` when that has no answer (a finding says why).
+    pub stability: Option<Stability>,
+    /// Largest (ω/kc)² ρ_gas/(ρ_liquid tanh kH) of the gas beside it at its longest mode: the share of the wave's
+    /// inertia and stiffness that treating this gas as incompressible leaves out, 1.
+    pub gas_compressibility: Option<f64>,
+}
+
+/// Where a slab sits.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Seat {
+    /// Between gas and gas (or open air): moves on its cushions.
+    Floating,
+    /// On the floor: moves with the cell.
+    OnFloor,
+    /// Under the lid: moves with the cell.
+    UnderLid,
+    /// From floor to lid.
+    Fill,
+}
+
+/// Vertical motion of a slab.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Motion {
+    /// Peak acceleration, m/s².
+    pub acceleration: f64,
+    /// |T|: slab over cell.
+    pub amplification: f64,
+    /// Phase relative to the cell, rad, (−π, π].
+    pub phase: f64,
+    /// |T − 1|·x: peak of its motion along the wall, m.
+    pub slide: f64,
+}
+
+/// An interface of a slab by the layers on either side of it.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Face {
+    /// Layer above; `None`: the open air.
+    pub above: Option<String>,
+    /// Layer below; `None`: the open air.
+    pub below: Option<String>,
+    /// Whether the denser fluid is above: at rest it falls.
+    pub heavier_above: bool,
+}
+
+/// Stability of a slab. Accelerations are the slab's own, peak, m/s².
+#[derive(Debug, Clone, PartialEq)]
+pub struct Stability {
+    /// Largest Re s over all modes, 1/s; positive grows.
+    pub growth_rate: f64,
+    /// The mode with that growth rate.
+    pub worst: SetBy,
+    /// Falls, waves or none.
+    pub mechanism: Mechanism,
+    /// Wavenumbers that grow, 1/m.
+    pub unstable_band: Option<(f64, f64)>,
+    /// Decay of the least damped interface mode, 1/s, when all decay.
+    pub ring_down: Option<f64>,
+    /// What holds; `None` without a drive frequency.
+    pub limits: Option<Limits>,
+}
+
+/// Between which accelerations of its own a slab is stable, m/s² peak.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Limits {
+    /// Intervals in which every mode is stable, ascending; upper end `None`: none found up to `searched_up_to`.
+    pub windows: Vec<(f64, Option<f64>)>,
+    /// Lower end of the window that holds the set value, or of the nearest; 0 when no drive is needed; without a
+    /// window the acceleration at which the last mode ceases to fall; `None`: nothing up to `searched_up_to` does.
+    pub hold: Option<f64>,
+    /// Upper end of the same window; without a window the onset of waves; `None`: none up to `searched_up_to`.
+    pub wave: Option<f64>,
+    /// What sets the lower end.
+    pub hold_set_by: Option<SetBy>,
+    /// What sets the upper end.
+    pub wave_set_by: Option<SetBy>,
+    /// Largest acceleration that was looked at.
+    pub searched_up_to: f64,
+}
+
+/// A mode: what grows first or fastest.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct SetBy {
+    /// Index into [`Slab::faces`].
+    pub face: usize,
+    /// 1/m
+    pub wavenumber: f64,
+    /// Which mode of the cell.
+    pub mode: Mode,
+    /// How it answers the drive.
+    pub response: Response,
+}
+
+/// A gas layer that is a spring.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Cushion {
+    /// Index of its layer in the stack.
+    pub index: usize,
+    /// Name of its layer.
+    pub layer: String,
+    /// Pa absolute
+    pub pressure: f64,
+    /// Complex polytropic exponent, real part.
+    pub polytropic_re: f64,
+    /// … and imaginary part: heat loss.
+    pub polytropic_im: f64,
+    /// Amplitude of the relative motion of its two faces over its thickness; `None` when the cell is at rest.
+    pub stroke_ratio: Option<f64>,
+}
+
+/// The window of the drive for the whole stack: **cell** acceleration, peak, m/s².
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct DriveWindow {
+    /// Whether some drive at this frequency holds everything.
+    pub exists: bool,
+    /// Lowest drive that holds everything; without a window the one at which the last face ceases to fall.
+    /// `None`: none found.
+    pub hold: Option<f64>,
+    /// Drive at which the first waves rise; `None`: none found.
+    pub wave: Option<f64>,
+    /// Index of the slab that sets the lower end.
+    pub hold_slab: Option<usize>,
+    /// Index of the slab that sets the upper end.
+    pub wave_slab: Option<usize>,
+    /// The set drive.
+    pub set: f64,
+}
+
+impl DriveWindow {
+    /// Hold margin: 1 − hold/set. `None` without a drive or a limit.
+    pub fn hold_margin(&self) -> Option<f64> {
+        (self.set > 0.0).then_some(())?;
+        self.hold.map(|hold| 1.0 - hold / self.set)
+    }
+
+    /// Wave margin: wave/set − 1. `None` without a drive or a limit.
+    pub fn wave_margin(&self) -> Option<f64> {
+        (self.set > 0.0).then_some(())?;
+        self.wave.map(|wave| wave / self.set - 1.0)
+    }
+}
+
+impl DriveState {
+    /// All three from frequency (Hz) and peak acceleration (m/s²).
+    pub fn new(frequency: f64, acceleration: f64) -> DriveState {
+        let omega = std::f64::consts::TAU * frequency;
+        DriveState {
+            frequency,
+            acceleration,
+            velocity: acceleration / omega,
+            displacement: acceleration / (omega * omega),
+        }
+    }
+}
+
+impl Face {
+    /// `oil|cushion`, the open air as `air above` or `air below`.
+    pub fn name(&self) -> String {
+        format!(
+            "{}|{}",
+            self.above.as_deref().unwrap_or("air above"),
+            self.below.as_deref().unwrap_or("air below")
+        )
+    }
+
+    /// `interface.oil|cushion`; the open face of a layer belongs to the layer.
+    pub fn place(&self) -> String {
+        match (&self.above, &self.below) {
+            (Some(above), Some(below)) => format!("interface.{above}|{below}"),
+            (Some(only), None) | (None, Some(only)) => format!("layer.{only}"),
+            (None, None) => "layer".to_owned(),
+        }
+    }
+
+    /// In a sentence: `the interface of "oil" over "cushion"`, `the upper face of "oil"`.
+    pub fn words(&self) -> String {
+        match (&self.above, &self.below) {
+            (Some(above), Some(below)) => format!("the interface of \"{above}\" over \"{below}\""),
+            (None, Some(below)) => format!("the upper face of \"{below}\""),
+            (Some(above), None) => format!("the lower face of \"{above}\""),
+            (None, None) => "the face".to_owned(),
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn margins_follow_the_one_wording() {
+        let window = DriveWindow {
+            exists: true,
+            hold: Some(100.0),
+            wave: Some(150.0),
+            hold_slab: Some(0),
+            wave_slab: Some(0),
+            set: 125.0,
+        };
+        assert!((window.hold_margin().unwrap_or_default() - 0.2).abs() < 1e-12);
+        assert!((window.wave_margin().unwrap_or_default() - 0.2).abs() < 1e-12);
+        assert_eq!(DriveWindow { set: 0.0, ..window }.hold_margin(), None, "no ratio to a drive of zero");
+    }
+
+    #[test]
+    fn drive_in_three_quantities() {
+        // D1 of the worked designs: 13.0 g0 peak at 50 Hz is 2.58 mm peak-to-peak.
+        let drive = DriveState::new(50.0, 13.0 * 9.80665);
+        assert!((2.0 * drive.displacement - 2.58e-3).abs() < 0.005e-3);
+        assert!((drive.velocity.powi(2) - drive.acceleration * drive.displacement).abs() < 1e-12);
+    }
+}
