@@ -1,0 +1,217 @@
+//! `topheavy check --format json`: the contract that scripts rest on. Keys are SI with the unit in the name; a
+//! rename is a new `format` number.
+
+use crate::Checked;
+use crate::line::word;
+use crate::number::{json, put, put_or_null};
+use checks::derived::{Cushion, Derived, Limits, Mechanism, Mode, Response, SetBy, Slab};
+use serde_json::{Map, Value, json};
+use setup::finding::{Edit, Finding, Fix, Span};
+use setup::lines::{Encoding, LineIndex};
+
+/// The number of this format.
+pub const FORMAT: u32 = 1;
+
+/// The whole document for the files of one run.
+pub fn document(files: &[Checked], encoding: Encoding) -> Value {
+    json!({
+        "format": FORMAT,
+        "tool": { "name": "topheavy", "version": env!("CARGO_PKG_VERSION") },
+        "position_encoding": encoding_name(encoding),
+        "files": files.iter().map(|checked| file(checked, encoding)).collect::<Vec<_>>(),
+    })
+}
+
+/// The name of a position encoding, as on the command line.
+pub fn encoding_name(encoding: Encoding) -> &'static str {
+    match encoding {
+        Encoding::Utf8 => "utf-8",
+        Encoding::Utf16 => "utf-16",
+        Encoding::Utf32 => "utf-32",
+    }
+}
+
+fn file(checked: &Checked, encoding: Encoding) -> Value {
+    let index = LineIndex::new(checked.text);
+    let at = Positions { text: checked.text, index: &index, encoding, path: checked.path };
+    let kind = if checked.path.ends_with(".lab.toml") { "library" } else { "setup" };
+    let mut object = Map::new();
+    object.insert("path".to_owned(), json!(checked.path));
+    object.insert("kind".to_owned(), json!(kind));
+    object.insert("verdict".to_owned(), json!(checked.analysis.verdict.word()));
+    let findings: Vec<_> = checked.analysis.findings.iter().map(|finding| self::finding(finding, &at)).collect();
+    object.insert("findings".to_owned(), Value::Array(findings));
+    if let Some(derived) = &checked.analysis.derived {
+        object.insert("results".to_owned(), results(derived));
+    }
+    Value::Object(object)
+}
+
+struct Positions<'a> {
+    text: &'a str,
+    index: &'a LineIndex,
+    encoding: Encoding,
+    path: &'a str,
+}
+
+impl Positions<'_> {
+    fn range(&self, span: &Span) -> Value {
+        let position = |offset: usize| {
+            let at = self.index.position(self.text, offset, self.encoding);
+            json!({ "line": at.line, "character": at.character })
+        };
+        json!({ "start": position(span.start), "end": position(span.end) })
+    }
+}
+
+fn finding(finding: &Finding, at: &Positions) -> Value {
+    let values: Map<String, Value> = finding
+        .values
+        .iter()
+        .filter_map(|(name, value)| Some(((*name).to_owned(), json(*value)?)))
+        .collect();
+    let mut object = Map::new();
+    object.insert("id".to_owned(), json!(finding.rule));
+    object.insert("severity".to_owned(), json!(word(finding.severity)));
+    object.insert("place".to_owned(), json!(finding.place));
+    object.insert("message".to_owned(), json!(finding.message.text()));
+    object.insert("range".to_owned(), at.range(&finding.span));
+    let related = |related: &setup::finding::Related| {
+        json!({ "path": at.path, "message": related.message, "range": at.range(&related.span) })
+    };
+    object.insert("related".to_owned(), finding.related.iter().map(related).collect());
+    object.insert("values".to_owned(), Value::Object(values));
+    object.insert("fixable".to_owned(), json!(finding.fixable));
+    // Absent where fixes were not searched for: `fixable` says whether there may be one.
+    if !finding.fixes.is_empty() || !finding.fixable {
+        object.insert("fixes".to_owned(), finding.fixes.iter().map(|fix| self::fix(fix, at)).collect());
+    }
+    object.insert("accepted".to_owned(), json!(finding.accepted));
+    Value::Object(object)
+}
+
+fn fix(fix: &Fix, at: &Positions) -> Value {
+    let edit = |edit: &Edit| json!({ "path": at.path, "range": at.range(&edit.span), "new_text": edit.new_text });
+    json!({
+        "title": fix.title,
+        "keeps_meaning": fix.keeps_meaning,
+        "edits": fix.edits.iter().map(edit).collect::<Vec<_>>(),
+    })
+}
+
+fn results(derived: &Derived) -> Value {
+    let mut object = Map::new();
+    object.insert("slabs".to_owned(), derived.slabs.iter().map(slab).collect());
+    object.insert("cushions".to_owned(), derived.cushions.iter().map(cushion).collect());
+    object.insert(
+        "natural_frequencies_hz".to_owned(),
+        derived.natural_frequencies.iter().filter_map(|f| json(*f)).collect(),
+    );
+    if let Some(window) = &derived.window {
+        let mut entry = Map::new();
+        put_or_null(&mut entry, "hold_drive_m_per_s2", window.hold);
+        put_or_null(&mut entry, "wave_drive_m_per_s2", window.wave);
+        if window.set > 0.0 {
+            put_or_null(&mut entry, "hold_drive_ratio", window.hold.map(|hold| hold / window.set));
+            put_or_null(&mut entry, "wave_drive_ratio", window.wave.map(|wave| wave / window.set));
+        }
+        object.insert("window".to_owned(), Value::Object(entry));
+    }
+    let defaults = derived.defaults.iter();
+    object.insert(
+        "defaults".to_owned(),
+        defaults.map(|d| json!({ "place": d.place, "value": d.value, "source": d.source })).collect(),
+    );
+    let not_looked_at = derived.not_looked_at.iter();
+    object.insert(
+        "not_looked_at".to_owned(),
+        not_looked_at.map(|n| json!({ "check": n.check, "needs": n.needs })).collect(),
+    );
+    object.insert("effects_off".to_owned(), derived.effects_off.iter().map(|effect| json!(effect.name())).collect());
+    Value::Object(object)
+}
+
+fn slab(slab: &Slab) -> Value {
+    let mut object = Map::new();
+    object.insert("name".to_owned(), json!(slab.name));
+    object.insert("layers".to_owned(), json!(slab.layers));
+    put(&mut object, "mass_kg_per_m2", slab.mass_per_area);
+    if let Some(motion) = &slab.motion {
+        put(&mut object, "acceleration_peak_m_per_s2", motion.acceleration);
+        put(&mut object, "amplification", motion.amplification);
+        put(&mut object, "phase_rad", motion.phase);
+    }
+    if let Some(stability) = &slab.stability {
+        put(&mut object, "growth_rate_per_s", stability.growth_rate);
+        object.insert("worst".to_owned(), mode(&stability.worst, slab));
+        object.insert("response".to_owned(), json!(response(stability.worst.response)));
+        object.insert("mechanism".to_owned(), json!(mechanism(stability.mechanism)));
+        if let Some(limits) = &stability.limits {
+            self::limits(&mut object, limits, slab);
+        }
+        put_or_null(&mut object, "ring_down_per_s", stability.ring_down);
+    }
+    Value::Object(object)
+}
+
+fn limits(object: &mut Map<String, Value>, limits: &Limits, slab: &Slab) {
+    let window = |(low, high): &(f64, Option<f64>)| json!([json(*low), high.and_then(json)]);
+    object.insert("windows_m_per_s2".to_owned(), limits.windows.iter().map(window).collect());
+    put_or_null(object, "hold_limit_m_per_s2", limits.hold);
+    put_or_null(object, "wave_limit_m_per_s2", limits.wave);
+    let set_by = |by: &Option<SetBy>| match by {
+        Some(by) => {
+            let mut entry = mode(by, slab);
+            entry["response"] = json!(response(by.response));
+            entry
+        }
+        None => Value::Null,
+    };
+    object.insert("hold_set_by".to_owned(), set_by(&limits.hold_set_by));
+    object.insert("wave_set_by".to_owned(), set_by(&limits.wave_set_by));
+}
+
+/// Which disturbance: wavenumber, shape in the cell, interface by the layers on either side.
+fn mode(by: &SetBy, slab: &Slab) -> Value {
+    let mut object = Map::new();
+    put(&mut object, "wavenumber_per_m", by.wavenumber);
+    let shape = match by.mode {
+        Mode::Cell([m, n]) => json!([m, n]),
+        Mode::Continuum => json!("continuum"),
+    };
+    object.insert("mode".to_owned(), shape);
+    if let Some(face) = slab.faces.get(by.face) {
+        object.insert("interface".to_owned(), json!(face.name()));
+    }
+    Value::Object(object)
+}
+
+fn cushion(cushion: &Cushion) -> Value {
+    let mut object = Map::new();
+    object.insert("layer".to_owned(), json!(cushion.layer));
+    put(&mut object, "pressure_abs_pa", cushion.pressure);
+    put(&mut object, "polytropic_re", cushion.polytropic_re);
+    put(&mut object, "polytropic_im", cushion.polytropic_im);
+    if let Some(stroke) = cushion.stroke_ratio {
+        put(&mut object, "stroke_ratio", stroke);
+    }
+    Value::Object(object)
+}
+
+/// The class of a response as a word.
+pub(crate) fn response(response: Response) -> &'static str {
+    match response {
+        Response::Harmonic => "harmonic",
+        Response::Subharmonic => "subharmonic",
+        Response::Other => "other",
+        Response::None => "none",
+    }
+}
+
+fn mechanism(mechanism: Mechanism) -> &'static str {
+    match mechanism {
+        Mechanism::Falls => "falls",
+        Mechanism::Waves => "waves",
+        Mechanism::None => "none",
+    }
+}
