@@ -1,1 +1,3 @@
 //! Helpers that the integration tests share.
+
+pub mod galerkin;
