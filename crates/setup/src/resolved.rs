@@ -326,6 +326,9 @@ impl Default for Limits {
             tolerance: None,
             digits: 17,
         };
-        Limits { hold_margin: given(0.15, "limits.hold-margin"), wave_margin: given(0.10, "limits.wave-margin") }
+        Limits {
+            hold_margin: given(0.15, "limits.hold-margin"),
+            wave_margin: given(0.10, "limits.wave-margin"),
+        }
     }
 }

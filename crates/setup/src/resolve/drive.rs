@@ -1,0 +1,172 @@
+//! `[drive]`: one set value, and cross-checks.
+
+use super::Resolver;
+use crate::finding::Finding;
+use crate::resolved::{Drive, DriveKey, Given};
+use crate::rules::{self, peak_rms_slip, values_disagree};
+use crate::written::WrittenSection;
+use quantity::Kind;
+use std::f64::consts::TAU;
+
+const KEYS: [(&str, DriveKey); 3] = [
+    ("acceleration", DriveKey::Acceleration),
+    ("velocity", DriveKey::Velocity),
+    ("displacement", DriveKey::Displacement),
+];
+
+impl Resolver<'_> {
+    pub(super) fn drive(&mut self) {
+        let document = self.document;
+        let Some(section) = document.section("drive") else {
+            // A lost header, or a key that fell out of the section: not the same as no drive.
+            self.setup.drive_unreadable =
+                document.unreadable.iter().any(|place| place == "drive" || place.starts_with("drive."));
+            return;
+        };
+        self.setup.drive_unreadable = true;
+        let frequency = self.written(section, "frequency");
+        if frequency.is_none() {
+            self.missing_key(section, "frequency");
+        }
+        let lost = KEYS.iter().any(|(key, _)| self.lost(&section.place_of(key)));
+        if !lost && KEYS.iter().all(|(key, _)| section.entry(key).is_none()) {
+            self.missing_key(section, "acceleration");
+        }
+        let Some(frequency) = frequency else { return };
+        let mut set: Option<Drive> = None;
+        for (key, by) in KEYS {
+            let unreadable = self.lost(&section.place_of(key));
+            if set.is_none() && unreadable {
+                // The first key in order is the set value; a later one must not take its place.
+                return;
+            }
+            let Some(value) = self.written(section, key) else { continue };
+            let acceleration = as_acceleration(value, by, frequency.value);
+            match &set {
+                None => set = Some(Drive { frequency: frequency.clone(), acceleration, set_by: by }),
+                Some(set) => {
+                    let finding = cross_check(section, set, key, &acceleration);
+                    self.findings.extend(finding);
+                }
+            }
+        }
+        self.setup.drive_unreadable = set.is_none();
+        self.setup.drive = set;
+    }
+}
+
+/// A peak velocity or displacement of a sine as its peak acceleration, m/s².
+fn as_acceleration(value: Given<f64>, by: DriveKey, frequency: f64) -> Given<f64> {
+    let angular = TAU * frequency;
+    let factor = match by {
+        DriveKey::Acceleration => 1.0,
+        DriveKey::Velocity => angular,
+        DriveKey::Displacement => angular * angular,
+    };
+    Given {
+        value: value.value * factor,
+        tolerance: value.tolerance.map(|tolerance| tolerance * factor),
+        ..value
+    }
+}
+
+fn cross_check(
+    section: &WrittenSection,
+    set: &Drive,
+    key: &'static str,
+    check: &Given<f64>,
+) -> Option<Finding> {
+    let (set_key, _) = KEYS.into_iter().find(|(_, by)| *by == set.set_by)?;
+    let difference = (check.value - set.acceleration.value).abs();
+    let tolerances = check.tolerance.unwrap_or(0.0) + set.acceleration.tolerance.unwrap_or(0.0);
+    if difference <= values_disagree::ROUNDING * set.acceleration.value.abs() + tolerances {
+        return None;
+    }
+    let ratio = check.value / set.acceleration.value;
+    let span = section.span_of(key);
+    let written = section.quantity(key)?;
+    if ratio.is_finite() && ratio > 0.0 {
+        if let Some(amplitude) = written.amplitude {
+            let slip = peak_rms_slip::Check {
+                set_key,
+                set_span: section.span_of(set_key),
+                key,
+                place: check.place.clone(),
+                span: span.clone(),
+                ratio,
+                amplitude,
+                text: Some(bare_text(written)),
+            };
+            if let Some(finding) = peak_rms_slip::finding(&slip) {
+                return Some(finding);
+            }
+        }
+    }
+    let printed = |value: f64| quantity::print_amplitude(value, Kind::VibrationAcceleration, 4);
+    let what = format!(
+        "`{set_key}` sets {}, while `{key}` stands for {} at {}.",
+        printed(set.acceleration.value),
+        printed(check.value),
+        quantity::print(set.frequency.value, Kind::Frequency, 4)
+    );
+    Some(rules::values_disagree::finding(&check.place, span, what, Some(section.span_of(set_key))))
+}
+
+/// The quantity as written without its amplitude word: number and unit.
+fn bare_text(quantity: &quantity::Quantity) -> String {
+    let text = quantity.rewritten(quantity.value, quantity.digits);
+    let unit = quantity.unit_text();
+    match text.find(unit) {
+        Some(at) if !unit.is_empty() => text[..at + unit.len()].to_owned(),
+        _ => text,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::resolved::DriveKey;
+
+    fn drive(lines: &str) -> crate::Understanding {
+        crate::understand(&format!(
+            "[drive]\n{lines}\n[cell]\ndiameter = \"80 mm\"\n[[layer]]\nfluid = \"water\"\nthickness = \"20 mm\"\n"
+        ))
+    }
+
+    /// A sine of displacement d and frequency f has velocity d·2πf and acceleration d·(2πf)²: 1 mm peak at 50 Hz is
+    /// 0.314159 m/s and 98.696 m/s² (π² × 10).
+    #[test]
+    fn displacement_and_velocity_become_acceleration() {
+        for (line, by) in [
+            ("displacement = \"1 mm peak\"", DriveKey::Displacement),
+            ("displacement = \"2 mm peak-to-peak\"", DriveKey::Displacement),
+            ("velocity = \"0.3141592654 m/s peak\"", DriveKey::Velocity),
+            ("acceleration = \"98.6960440 m/s² peak\"", DriveKey::Acceleration),
+            ("acceleration = \"69.7886419 m/s² rms\"", DriveKey::Acceleration),
+        ] {
+            let read = drive(&format!("frequency = \"50 Hz\"\n{line}"));
+            let set = read.setup.drive.unwrap_or_else(|| panic!("{line}: {:?}", read.findings));
+            assert!(
+                (set.acceleration.value / 98.696_044_01 - 1.0).abs() < 1e-8,
+                "{line}: {}",
+                set.acceleration.value
+            );
+            assert_eq!(set.set_by, by);
+        }
+    }
+
+    #[test]
+    fn an_unreadable_set_value_is_not_replaced_by_its_cross_check() {
+        let read = drive("frequency = \"50 Hz\"\nacceleration = \"10 g0\"\ndisplacement = \"1 mm peak\"");
+        assert!(read.setup.drive.is_none() && read.setup.drive_unreadable);
+        assert_eq!(read.findings.len(), 1, "{:?}", read.findings);
+    }
+
+    #[test]
+    fn no_drive_is_a_cell_at_rest() {
+        let read = crate::understand(
+            "[cell]\ndiameter = \"80 mm\"\n[[layer]]\nfluid = \"water\"\nthickness = \"20 mm\"\n",
+        );
+        assert!(read.setup.drive.is_none() && !read.setup.drive_unreadable);
+        assert!(read.findings.is_empty(), "{:?}", read.findings);
+    }
+}
