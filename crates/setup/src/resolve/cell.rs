@@ -1,7 +1,6 @@
 //! `[cell]`.
 
 use super::Resolver;
-use crate::declare;
 use crate::resolved::{Cell, Plan};
 use crate::rules;
 use crate::written::WrittenSection;
@@ -27,10 +26,9 @@ impl Resolver<'_> {
             }
         }
         let height = self.written(section, "height");
-        if height.is_none() && !self.lost("cell.height") {
-            if let Some(key) = declare::section("cell").and_then(|cell| cell.key("height")) {
-                self.list_default("cell.height", key);
-            }
+        let by_layers = height.is_none() && !self.lost("cell.height");
+        if let Some(key) = section.declaration.key("height").filter(|_| by_layers) {
+            self.list_default("cell.height", key);
         }
         let sealed_top = self.flag(section, "top", "sealed");
         let open_bottom = self.flag(section, "bottom", "open");

@@ -3,7 +3,7 @@
 use super::Resolver;
 use crate::finding::Finding;
 use crate::resolved::{Drive, DriveKey, Given};
-use crate::rules::{self, peak_rms_slip, values_disagree};
+use crate::rules::{peak_rms_slip, values_disagree};
 use crate::written::WrittenSection;
 use quantity::Kind;
 use std::f64::consts::TAU;
@@ -85,21 +85,19 @@ fn cross_check(
     let ratio = check.value / set.acceleration.value;
     let span = section.span_of(key);
     let written = section.quantity(key)?;
-    if ratio.is_finite() && ratio > 0.0 {
-        if let Some(amplitude) = written.amplitude {
-            let slip = peak_rms_slip::Check {
-                set_key,
-                set_span: section.span_of(set_key),
-                key,
-                place: check.place.clone(),
-                span: span.clone(),
-                ratio,
-                amplitude,
-                text: Some(bare_text(written)),
-            };
-            if let Some(finding) = peak_rms_slip::finding(&slip) {
-                return Some(finding);
-            }
+    if let Some(amplitude) = written.amplitude.filter(|_| ratio.is_finite() && ratio > 0.0) {
+        let slip = peak_rms_slip::Check {
+            set_key,
+            set_span: section.span_of(set_key),
+            key,
+            place: check.place.clone(),
+            span: span.clone(),
+            ratio,
+            amplitude,
+            text: bare_text(written),
+        };
+        if let Some(finding) = peak_rms_slip::finding(&slip) {
+            return Some(finding);
         }
     }
     let printed = |value: f64| quantity::print_amplitude(value, Kind::VibrationAcceleration, 4);
@@ -109,7 +107,7 @@ fn cross_check(
         printed(check.value),
         quantity::print(set.frequency.value, Kind::Frequency, 4)
     );
-    Some(rules::values_disagree::finding(&check.place, span, what, Some(section.span_of(set_key))))
+    Some(values_disagree::finding(&check.place, span, what, Some(section.span_of(set_key))))
 }
 
 /// The quantity as written without its amplitude word: number and unit.

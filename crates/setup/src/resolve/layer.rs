@@ -292,7 +292,7 @@ impl Resolver<'_> {
             for (index, name) in names.iter().enumerate() {
                 if !self.setup.layers.iter().any(|layer| layer.name == *name) {
                     found = false;
-                    if stack_whole {
+                    if document.knows_names("layer") {
                         self.layer_not_found(section, index, name);
                     }
                 }

@@ -13,7 +13,8 @@ impl Resolver<'_> {
                 let (Some(path), Some(name)) = (home(of), section.text(entry.key.name)) else { continue };
                 let in_library = matches!(of, NameOf::VibrationTable | NameOf::Camera | NameOf::Body);
                 let known: Vec<&str> = document.sections(path).map(|section| section.name.as_str()).collect();
-                if known.contains(&name) || self.lost(path) || in_library && self.uses_libraries() {
+                if known.contains(&name) || !document.knows_names(path) || in_library && self.uses_libraries()
+                {
                     continue;
                 }
                 let near = nearest::by_letters(name, known.iter().copied());

@@ -99,10 +99,10 @@ impl Resolver<'_> {
         let mut segments = at.split('.');
         let (Some(first), Some(name)) = (segments.next(), segments.next()) else { return };
         let home = if first == "interface" { "layer" } else { first };
-        if !matches!(home, "layer" | "fluid" | "body") || self.lost(home) {
+        let document = self.document;
+        if !matches!(home, "layer" | "fluid" | "body") || !document.knows_names(home) {
             return;
         }
-        let document = self.document;
         let known: Vec<&str> = document.sections(home).map(|section| section.name.as_str()).collect();
         let place = section.place_of("at");
         for part in name.split('|') {

@@ -2,7 +2,7 @@
 //!
 //! The same key twice in one section, so that it is open which of the two values holds.
 //!
-//! Why it matters: Two people reading the file would run two experiments; the tool takes the first and says so.
+//! Why it matters: Two people reading the file would run two experiments; until one is taken away neither is used.
 //!
 //! What to do: Keep the one that is meant and take the other away.
 
@@ -10,10 +10,9 @@ use crate::finding::{Finding, Related};
 use crate::tree::Slip;
 
 /// The finding of a repeated key.
-pub(crate) fn finding(slip: &Slip) -> Finding {
-    let place = slip.lost_key.as_deref().unwrap_or_default().join(".");
+pub(crate) fn finding(slip: &Slip, place: &str) -> Finding {
     let mut finding =
-        super::found("key-given-twice", &place, slip.span.clone(), super::sentence(&slip.message), "");
+        super::found("key-given-twice", place, slip.span.clone(), super::sentence(&slip.message), "");
     if let Some(first) = &slip.related {
         finding.related.push(Related { span: first.clone(), message: "Given here first.".to_owned() });
     }
@@ -33,6 +32,8 @@ mod tests {
         let text = EXAMPLE.replace("length = \"120 mm\"", "length = \"120 mm\"\nlength = \"130 mm\"");
         let found = only(&text, "key-given-twice");
         assert_eq!(found.related.len(), 1, "the first one is shown");
+        assert_eq!(found.place, "cell.length");
+        assert!(crate::understand(&text).setup.cell.is_none(), "neither is used");
         mended(&text, "key-given-twice");
     }
 }

@@ -14,7 +14,7 @@ use crate::rules::{found, listed, replace};
 use crate::tree::{Entry, Value};
 
 /// A key of the section `path` at `place`. `taken`: the nearest key is there already.
-pub(crate) fn key(path: &str, place: &str, entry: &Entry, near: &Near, taken: bool) -> Finding {
+pub(crate) fn key(path: &str, place: &str, entry: &Entry, near: &Near<'static>, taken: bool) -> Finding {
     let heading = if path.is_empty() { "The top of the file".to_owned() } else { format!("`{path}`") };
     let what = format!("{heading} has no key `{}`.", entry.key);
     let remedy = match near.names.as_slice() {
@@ -39,7 +39,7 @@ pub(crate) fn key(path: &str, place: &str, entry: &Entry, near: &Near, taken: bo
 }
 
 /// A header.
-pub(crate) fn header(entry: &Entry, near: &Near) -> Finding {
+pub(crate) fn header(entry: &Entry, near: &Near<'static>) -> Finding {
     let what = format!("There is no section `{}`.", entry.key);
     let names: Vec<&str> = near.names.iter().copied().take(if near.clear { 1 } else { 3 }).collect();
     let remedy = if names.is_empty() { String::new() } else { format!("Did you mean {}?", listed(&names)) };
@@ -61,6 +61,16 @@ pub(crate) fn header(entry: &Entry, near: &Near) -> Finding {
         )),
         _ => finding,
     }
+}
+
+/// A header below a section, such as `[cell.floor]`; the names of `near` are whole paths.
+pub(crate) fn part(place: &str, entry: &Entry, near: &Near<'static>) -> Finding {
+    let last = |path: &&'static str| path.rsplit('.').next().unwrap_or(path);
+    let names = near.names.iter().map(last).collect();
+    let mut finding = header(entry, &Near { names, clear: near.clear });
+    finding.place = crate::written::join(place, &entry.key);
+    finding.message.what = format!("`{place}` has no part `{}`.", entry.key);
+    finding
 }
 
 #[cfg(test)]
@@ -90,6 +100,13 @@ mod tests {
         let text = EXAMPLE.replace("[cell]", "[container]");
         only(&text, "key-not-known");
         mended(&text, "key-not-known");
+    }
+
+    #[test]
+    fn a_part_of_the_cell_is_looked_for_among_parts() {
+        let text = format!("{EXAMPLE}\n[cell.floor]\nthickness = \"10 mm\"\n");
+        let found = only(&text, "key-not-known");
+        assert_eq!(found.fixes[0].edits[0].new_text, "base");
     }
 
     #[test]

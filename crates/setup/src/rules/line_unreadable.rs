@@ -10,10 +10,9 @@ use crate::finding::{Finding, Related};
 use crate::tree::Slip;
 
 /// The finding of a broken statement.
-pub(crate) fn finding(text: &str, slip: &Slip) -> Finding {
-    let place = slip.lost_key.as_deref().unwrap_or_default().join(".");
+pub(crate) fn finding(text: &str, slip: &Slip, place: &str) -> Finding {
     let span = if slip.span.end <= text.len() { slip.span.clone() } else { slip.statement.clone() };
-    let mut finding = super::found("line-unreadable", &place, span, super::sentence(&slip.message), "");
+    let mut finding = super::found("line-unreadable", place, span, super::sentence(&slip.message), "");
     if let Some(related) = &slip.related {
         finding.related.push(Related { span: related.clone(), message: "Involved in it.".to_owned() });
     }

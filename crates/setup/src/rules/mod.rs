@@ -98,11 +98,11 @@ pub(crate) fn replace(title: impl Into<String>, keeps_meaning: bool, span: Span,
     Fix { title: title.into(), keeps_meaning, edits: vec![Edit { span, new_text }] }
 }
 
-/// The finding of a broken statement.
-pub(crate) fn slip(text: &str, slip: &Slip) -> Finding {
+/// The finding of a broken statement; `place`: of the value that it took away, as far as it can be told.
+pub(crate) fn slip(text: &str, slip: &Slip, place: &str) -> Finding {
     match slip.kind {
-        SlipKind::GivenTwice => key_given_twice::finding(slip),
-        SlipKind::Unreadable | SlipKind::TableUnknown => line_unreadable::finding(text, slip),
+        SlipKind::GivenTwice => key_given_twice::finding(slip, place),
+        SlipKind::Unreadable | SlipKind::TableUnknown => line_unreadable::finding(text, slip, place),
     }
 }
 

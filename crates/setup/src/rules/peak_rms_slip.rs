@@ -31,8 +31,7 @@ fn mixed_up(ratio: f64) -> Option<(&'static str, [Amplitude; 2])> {
     }
 }
 
-/// The cross-check `key` at `place` against the set value. `ratio`: accelerations that the two stand for, check over
-/// set. `amplitude`, `text`: the word and the text of the cross-check. `None` when the ratio is no slip.
+/// A cross-check against the set value; `None` when their ratio is no slip.
 pub(crate) fn finding(slip: &Check) -> Option<Finding> {
     let (factor, words) = mixed_up(slip.ratio)?;
     let what = format!(
@@ -47,11 +46,11 @@ pub(crate) fn finding(slip: &Check) -> Option<Finding> {
         let reread = slip.ratio * word.to_peak() / slip.amplitude.to_peak();
         *word != slip.amplitude && (reread - 1.0).abs() <= 2.0 * WITHIN
     });
-    if let (Some(word), Some(text)) = (meant, &slip.text) {
+    if let Some(word) = meant {
         finding = finding.with_fix(Fix {
             title: format!("Read `{}` as {}", slip.key, said(word)),
             keeps_meaning: false,
-            edits: vec![Edit { span: slip.span.clone(), new_text: quoted(&with_word(text, word)) }],
+            edits: vec![Edit { span: slip.span.clone(), new_text: quoted(&with_word(&slip.text, word)) }],
         });
     }
     Some(finding)
@@ -67,7 +66,7 @@ pub(crate) struct Check {
     pub ratio: f64,
     pub amplitude: Amplitude,
     /// The number with its unit, without the amplitude word.
-    pub text: Option<String>,
+    pub text: String,
 }
 
 fn said(word: Amplitude) -> &'static str {

@@ -4,7 +4,7 @@ use crate::finding::{Edit, Finding};
 use crate::understand;
 
 /// Uses every key that is looked at, and reads without a finding.
-pub(crate) const EXAMPLE: &str = include_str!("example.stack.toml");
+pub(crate) const EXAMPLE: &str = include_str!("../../tests/examples/levitated.stack.toml");
 
 /// The rules that fire, in the order of the text.
 pub(crate) fn rules(text: &str) -> Vec<&'static str> {

@@ -26,7 +26,9 @@ pub(crate) fn finding(text: &str, document: &Document, place: &str, span: Span) 
         }
         None => Some(text.len()),
     };
-    let Some(at) = at else { return finding };
+    let inline =
+        header.as_ref().is_some_and(|header| !text.get(header.clone()).unwrap_or_default().starts_with('['));
+    let Some(at) = at.filter(|_| !inline) else { return finding };
     finding.with_fixes(MEANINGS.map(|(word, said)| {
         let line = format!("meaning = {}\n", quoted(word));
         let new_text = match header {

@@ -6,19 +6,26 @@
 //!
 //! What to do: Check the number and its unit.
 
-use crate::declare::{Bounds, Key, kind};
+use crate::declare::{Bounds, Key};
 use crate::finding::{Finding, Span};
 use crate::rules::found;
 use quantity::Kind;
 
-/// `value`: SI, peak, absolute.
-pub(crate) fn finding(key: &Key, place: &str, span: Span, value: f64, bounds: &Bounds) -> Finding {
-    let printed = match kind(&key.holds) {
-        Some(
-            kind @ (Kind::VibrationAcceleration | Kind::VibrationVelocity | Kind::VibrationDisplacement),
-        ) => quantity::print_amplitude(value, kind, 3),
-        Some(Kind::Viscosity) | None => format!("{value:.3e} (SI)"),
-        Some(kind) => quantity::print(value, kind, 3),
+/// `value`: SI, peak, absolute; `kind`: as read.
+pub(crate) fn finding(
+    key: &Key,
+    place: &str,
+    span: Span,
+    value: f64,
+    kind: Kind,
+    bounds: &Bounds,
+) -> Finding {
+    let printed = match kind {
+        Kind::VibrationAcceleration | Kind::VibrationVelocity | Kind::VibrationDisplacement => {
+            quantity::print_amplitude(value, kind, 3)
+        }
+        Kind::Pressure => quantity::print(value, Kind::AbsolutePressure, 3),
+        kind => quantity::print(value, kind, 3),
     };
     let what = format!("`{}` is {printed}, outside its range of {}: {}.", key.name, bounds.said, bounds.why);
     let mut finding = found("value-out-of-range", place, span, what, "");

@@ -2,30 +2,54 @@
 
 use super::Document;
 use crate::declare::{self, Form};
-use crate::tree::{Reading, SlipKind};
+use crate::places::Spot;
+use crate::rules;
+use crate::tree::{Reading, Slip, SlipKind};
 
-/// Marks the place of every value that a slip took away.
+/// Reports every broken statement, and marks the place of every value that it took away.
 pub(super) fn mark(text: &str, reading: &Reading, document: &mut Document) {
     for slip in &reading.slips {
-        let path = slip.lost_key.as_deref().unwrap_or_default();
-        match path {
-            // Equal keys: which of the two is meant is not sure, so none is used.
-            [] if slip.kind == SlipKind::GivenTwice => {}
-            [] => mark_unknown(text, slip.span.start, slip.kind, document),
-            [key] => {
-                document.unreadable.insert(key.clone());
+        let place = place_of(slip, document);
+        document.findings.push(rules::slip(text, slip, &place));
+        if place.is_empty() {
+            mark_unknown(text, slip.span.start, slip.kind, document);
+        } else {
+            if slip.kind == SlipKind::GivenTwice {
+                forget(&place, document);
             }
-            [outer, rest @ ..] => {
-                let place = place_of(outer, rest, slip.span.start, document);
-                document.unreadable.insert(place);
-            }
+            document.unreadable.insert(place);
         }
+    }
+}
+
+/// Of two equal keys it is not sure which is meant, so neither is used.
+fn forget(place: &str, document: &mut Document) {
+    for entry in document.sections.iter_mut().flat_map(|section| &mut section.entries) {
+        if entry.place == place {
+            entry.value = None;
+        }
+    }
+}
+
+/// The place of the value that a slip took away; empty when it cannot be told.
+fn place_of(slip: &Slip, document: &Document) -> String {
+    let first = slip.related.as_ref().filter(|_| slip.kind == SlipKind::GivenTwice).and_then(|first| {
+        let has_key = |spot: &Spot| {
+            spot.key.as_ref().is_some_and(|key| key.start <= first.start && first.end <= spot.statement.end)
+        };
+        document.places.iter().find(|(_, spot)| has_key(spot)).map(|(place, _)| place.to_owned())
+    });
+    match (first, slip.lost_key.as_deref().unwrap_or_default()) {
+        (Some(place), _) => place,
+        (None, []) => String::new(),
+        (None, [key]) => key.clone(),
+        (None, [outer, rest @ ..]) => place_below(outer, rest, slip.span.start, document),
     }
 }
 
 /// The place of a lost key. In a repeated section the path has no index, so the element is told by position: the last
 /// header above the slip.
-fn place_of(outer: &str, rest: &[String], start: usize, document: &Document) -> String {
+fn place_below(outer: &str, rest: &[String], start: usize, document: &Document) -> String {
     let repeated = declare::section(outer).is_some_and(|section| section.form == Form::Repeated);
     if !repeated {
         return format!("{outer}.{}", rest.join("."));

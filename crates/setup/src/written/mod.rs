@@ -82,6 +82,13 @@ impl Document {
             place == lost || place.strip_prefix(lost.as_str()).is_some_and(|rest| rest.starts_with('.'))
         })
     }
+
+    /// Whether the names of all sections of a path are known: no header and no `name` of one is lost. Until then
+    /// nobody says that a name is not found.
+    pub fn knows_names(&self, path: &str) -> bool {
+        let name_lost = |section: &WrittenSection| self.unreadable.contains(&section.place_of("name"));
+        !self.unreadable.contains(path) && !self.sections(path).any(name_lost)
+    }
 }
 
 impl WrittenSection {

@@ -29,6 +29,14 @@ pub(super) fn in_section(
     table: &Table,
     entry: &Entry,
 ) {
+    let below = format!("{}.", section.path);
+    let is_part = |part: &&&'static Section| part.path.starts_with(&below);
+    let parts: Vec<&'static Section> = declare::declarations().iter().filter(is_part).copied().collect();
+    if matches!(entry.value, Value::Table(_)) && !parts.is_empty() {
+        let near = nearest::header(&parts, &entry.key);
+        walk.document.findings.push(rules::key_not_known::part(place, entry, &near));
+        return;
+    }
     unknown_key(walk, section.path, section.keys, place, table, entry);
 }
 
@@ -47,7 +55,7 @@ fn unknown_key(walk: &mut Walk, path: &str, keys: &'static [Key], place: &str, t
         });
         return;
     }
-    for name in &near.names {
+    for name in near.names.iter().filter(|name| table.get(name).is_none()) {
         walk.document.unreadable.insert(join(place, name));
     }
     // A mend must not make a second key of the same name.
@@ -143,9 +151,13 @@ fn homes(key: &str, path: &str) -> Vec<&'static Section> {
     match homes.iter().find(|section| section.form == Form::Root) {
         Some(root) => vec![*root],
         None => {
-            let looked: Vec<_> =
-                homes.iter().filter(|section| section.attention == Attention::Looked).copied().collect();
+            let looked: Vec<_> = homes.iter().filter(|section| looked_at(section, key)).copied().collect();
             if looked.is_empty() { homes } else { looked }
         }
     }
+}
+
+fn looked_at(section: &Section, key: &str) -> bool {
+    let looked = |attention: Attention| !matches!(attention, Attention::NotLooked(_));
+    looked(section.attention) && section.key(key).is_some_and(|key| looked(key.attention))
 }

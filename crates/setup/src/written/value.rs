@@ -169,7 +169,8 @@ impl Reader<'_, '_> {
         };
         let within = bounds.hold(value);
         if !within {
-            let finding = rules::value_out_of_range::finding(self.key, self.place, span, value, bounds);
+            let finding =
+                rules::value_out_of_range::finding(self.key, self.place, span, value, quantity.kind, bounds);
             self.walk.document.findings.push(finding);
         }
         within

@@ -21,9 +21,6 @@ pub(crate) fn walk(text: &str, reading: &Reading) -> Document {
         misplaced: Vec::new(),
         document: Document::default(),
     };
-    for slip in &reading.slips {
-        walk.document.findings.push(rules::slip(text, slip));
-    }
     if let Some(root) = declare::section("") {
         walk.root(root, &reading.root);
     }
@@ -282,15 +279,14 @@ fn repeated_name(section: &Section, table: &Table, index: usize) -> String {
     if section.keys.iter().any(|key| matches!(key.holds, Holds::Name)) {
         return text("name").unwrap_or_else(|| format!("{} {}", section.path, index + 1));
     }
-    if let Some(Value::Array(items, _)) = table.get("between").map(|entry| &entry.value) {
-        if let [Value::Text(first), Value::Text(second)] = items.as_slice() {
-            let (first, second) = (folded(&first.value), folded(&second.value));
-            if value::is_name(&first) && value::is_name(&second) {
-                return format!("{first}|{second}");
-            }
-        }
-    }
-    index.to_string()
+    let pair = match table.get("between").map(|entry| &entry.value) {
+        Some(Value::Array(items, _)) => match items.as_slice() {
+            [Value::Text(first), Value::Text(second)] => [folded(&first.value), folded(&second.value)],
+            _ => return index.to_string(),
+        },
+        _ => return index.to_string(),
+    };
+    if pair.iter().all(|name| value::is_name(name)) { pair.join("|") } else { index.to_string() }
 }
 
 fn name_span(table: &Table) -> Option<Span> {
