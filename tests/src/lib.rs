@@ -1,3 +1,4 @@
 //! Helpers that the integration tests share.
 
+pub mod draw;
 pub mod galerkin;

@@ -1,0 +1,236 @@
+//! The stability solver against the independent second method on random stacks: growth rates, classes, numbers of
+//! growing exponents and neutral accelerations.
+
+use physics::stability::layered::{FluidLayer, Forcing, Layered, Response};
+use physics::stability::{Failure, Growth, growth, neutral};
+use rayon::prelude::*;
+use std::f64::consts::TAU;
+use topheavy_tests::draw::Draw;
+use topheavy_tests::galerkin::{Exponent, Resolution, Second};
+
+/// Another one through the environment variable `TOPHEAVY_SEED`.
+const SEED: u64 = 20_240_607;
+/// Stacks of one to three interfaces drawn over the whole range.
+const WIDE: usize = 200;
+/// Thin slabs between gases, where the two faces resonate in combination.
+const THIN: usize = 60;
+/// Growing states: relative difference of the growth rates.
+const RATE: f64 = 1e-4;
+/// Neutral accelerations: the number of growing exponents changes within this of them.
+const THRESHOLD: f64 = 1e-4;
+/// Neutral accelerations checked of each stack, from the lowest.
+const CHECKED: usize = 3;
+const G: f64 = 9.80665;
+
+/// One random question.
+#[derive(Debug, Clone)]
+struct Question {
+    number: usize,
+    layered: Layered,
+    omega: f64,
+    wavenumber: f64,
+    /// Drive over threshold.
+    drive: f64,
+}
+
+/// The wavenumber at which an interface on its own (deep, inviscid) swings with `half_omega`.
+fn resonant(above: f64, below: f64, tension: f64, half_omega: f64) -> f64 {
+    let excess = |k: f64| {
+        ((below - above).abs() * G * k + tension * k.powi(3)) / (below + above) - half_omega * half_omega
+    };
+    let (mut low, mut high) = (1.0, 1e5);
+    for _ in 0..100 {
+        let middle = f64::sqrt(low * high);
+        if excess(middle) < 0.0 { low = middle } else { high = middle }
+    }
+    low
+}
+
+/// One to three interfaces; depths 0.05 to 5 wavelengths, 1 to 5000 mm²/s, neighbours' densities 0.001 to 0.999 of
+/// each other either way up, 0 to 70 mN/m, 10 to 300 Hz.
+fn wide(number: usize, draw: &mut Draw) -> Question {
+    let interfaces = 1 + number % 3;
+    let omega = TAU * draw.scaled(10.0, 300.0);
+    let mut density = draw.scaled(1.0, 2000.0);
+    let mut densities = vec![density];
+    for _ in 0..interfaces {
+        let ratio = if draw.chance(0.5) { draw.scaled(0.001, 0.999) } else { draw.between(0.1, 0.999) };
+        // Kept near what fluids have, else a coin.
+        let heavier = if density < 10.0 { true } else { density < 500.0 && draw.chance(0.5) };
+        density *= if heavier { 1.0 / ratio } else { ratio };
+        densities.push(density);
+    }
+    let tensions: Vec<f64> =
+        (0..interfaces).map(|_| if draw.chance(0.1) { 0.0 } else { draw.between(0.0, 0.070) }).collect();
+    let i = draw.one_of(interfaces);
+    let near = resonant(densities[i], densities[i + 1], tensions[i], 0.5 * omega);
+    // Wavelengths between 1 mm and 0.5 m, most of them near the resonance of one of the interfaces.
+    let wavenumber = (near * draw.scaled(0.5, 2.0)).clamp(TAU / 0.5, TAU / 1e-3);
+    let layers = densities
+        .iter()
+        .map(|density| FluidLayer {
+            density: *density,
+            viscosity: density * draw.scaled(1e-6, 5e-3),
+            thickness: TAU / wavenumber * draw.scaled(0.05, 5.0),
+        })
+        .collect();
+    let drive = if draw.chance(0.04) { 0.0 } else { draw.between(0.0, 1.5) };
+    Question { number, layered: Layered { gravity: G, layers, tensions }, omega, wavenumber, drive }
+}
+
+/// A viscous slab thinner than half a wavelength between gases.
+fn thin(number: usize, draw: &mut Draw) -> Question {
+    let density = draw.between(900.0, 1300.0);
+    let tensions = vec![draw.between(0.015, 0.070), draw.between(0.015, 0.070)];
+    let omega = TAU * draw.scaled(30.0, 120.0);
+    let nu = draw.scaled(3e-4, 2e-3);
+    let near = resonant(density, 0.0, tensions[0], 0.5 * omega);
+    let wavenumber = near * draw.scaled(0.7, 1.4);
+    let mut gas = || {
+        let density = draw.between(1.0, 2.0);
+        FluidLayer { density, viscosity: 1.8e-5, thickness: TAU / wavenumber * draw.scaled(0.2, 3.0) }
+    };
+    let (above, below) = (gas(), gas());
+    let thickness = TAU / wavenumber * draw.between(0.1, 0.5);
+    let slab = FluidLayer { density, viscosity: density * nu, thickness };
+    let drive = draw.between(1.0, 1.5);
+    let layered = Layered { gravity: G, layers: vec![above, slab, below], tensions };
+    Question { number, layered, omega, wavenumber, drive }
+}
+
+/// What came of one question.
+#[derive(Debug, Default)]
+struct Answer {
+    /// One line each, with all its numbers.
+    disagreements: Vec<String>,
+    /// Why the solver gave no value.
+    refused: Option<String>,
+    thresholds: usize,
+    /// Class of the leading exponent where it grows.
+    grows: Option<Response>,
+    /// Nothing neutral up to the search's end: drive is a fraction of that end.
+    without_threshold: bool,
+    /// Relative difference of the leading exponent.
+    difference: f64,
+}
+
+fn ask(question: &Question) -> Answer {
+    let mut answer = Answer::default();
+    if let Err(failure) = compare(question, &mut answer) {
+        answer.refused = Some(failure.to_string());
+    }
+    answer
+}
+
+fn compare(question: &Question, answer: &mut Answer) -> Result<(), Failure> {
+    let Question { layered, omega, wavenumber: k, drive, .. } = question;
+    let (omega, k) = (*omega, *k);
+    let second = Second::new(layered, omega, k, &Resolution::default());
+    let (marginal, searched) = marginal(layered, omega, k)?;
+    for (a, _) in marginal.iter().take(CHECKED) {
+        // Neighbours within the tolerance are crossed together; each real one changes the number by one, each
+        // complex pair by two, up or down.
+        let (low, high) = (a * (1.0 - THRESHOLD), a * (1.0 + THRESHOLD));
+        let crossed = marginal.iter().filter(|(other, _)| (low..=high).contains(other));
+        let most: usize = crossed.map(|(_, class)| if *class == Response::Other { 2 } else { 1 }).sum();
+        let change = second.growing(high).abs_diff(second.growing(low));
+        if change == 0 || change > most || (most - change) % 2 != 0 {
+            answer.disagreements.push(format!("neutral at {a}: change {change}, expected {most}; {marginal:?}"));
+        }
+        answer.thresholds += 1;
+    }
+    answer.without_threshold = marginal.is_empty();
+    let a = drive * marginal.first().map_or(searched, |first| first.0);
+    let found = growth(layered, &Forcing { omega, acceleration: a }, k, &|| false)?;
+    let exponents = second.at(a);
+    let growing = exponents.iter().filter(|exponent| exponent.rate > 0.0).count();
+    if growing != found.unstable {
+        let text = format!("at {a}: {} grow, second method {growing}: {:?}", found.unstable, &exponents[..4]);
+        answer.disagreements.push(text);
+    }
+    let same_class = a == 0.0 || growing == 0 || found.response == exponents[0].response;
+    if growing > 0 {
+        answer.grows = Some(found.response);
+        answer.difference = (found.rate - exponents[0].rate).abs() / exponents[0].rate;
+    } else {
+        // Vorticity modes decay more slowly than the wave: what the solver calls the least damped interface mode
+        // must be one of the exponents. Deep in a crowd of vorticity modes the mesh for the wave is too coarse.
+        answer.difference = nearest(&exponents, &found, omega);
+        for degree in [20, 44] {
+            if answer.difference > RATE {
+                let finer = Second::new(layered, omega, k, &Resolution { degree, ..Resolution::default() });
+                answer.difference = nearest(&finer.at(a), &found, omega);
+            }
+        }
+    }
+    if answer.difference > RATE || !same_class {
+        let text = format!("at {a}: {found:?} off by {:.1e}: {:?}", answer.difference, &exponents[..4]);
+        answer.disagreements.push(text);
+    }
+    Ok(())
+}
+
+/// Neutral accelerations, ascending, of the first range in which there are any, and the end of the search.
+fn marginal(layered: &Layered, omega: f64, k: f64) -> Result<(Vec<(f64, Response)>, f64), Failure> {
+    // Where an inviscid deep interface answers strongly, and where gravity is overcome.
+    let mut up_to = (0.5 * omega * omega / k).max(2.0 * omega * (2.0 * G / k).sqrt());
+    let mut all = Vec::new();
+    for _ in 0..4 {
+        let found = neutral(layered, omega, k, up_to, &|| false)?;
+        for (list, class) in [
+            (found.harmonic, Response::Harmonic),
+            (found.subharmonic, Response::Subharmonic),
+            (found.other, Response::Other),
+        ] {
+            all.extend(list.into_iter().map(|a| (a, class)));
+        }
+        if !all.is_empty() {
+            break;
+        }
+        up_to *= 4.0;
+    }
+    all.sort_by(|x, y| x.0.total_cmp(&y.0));
+    Ok((all, up_to))
+}
+
+/// Distance of a decaying exponent to the nearest one of the second method, relative to its size.
+fn nearest(exponents: &[Exponent], found: &Growth, omega: f64) -> f64 {
+    let turns = found.frequency / omega;
+    let folded = (turns - turns.round()).abs() * omega;
+    let size = found.rate.hypot(found.frequency);
+    exponents
+        .iter()
+        .map(|exponent| (exponent.rate - found.rate).hypot(exponent.frequency - folded) / size)
+        .fold(f64::INFINITY, f64::min)
+}
+
+#[test]
+fn random_stacks_agree_with_the_second_method() {
+    let seed = std::env::var("TOPHEAVY_SEED").ok().and_then(|text| text.parse().ok()).unwrap_or(SEED);
+    let mut draw = Draw::new(seed);
+    let mut questions: Vec<Question> = (0..WIDE).map(|number| wide(number, &mut draw)).collect();
+    questions.extend((WIDE..WIDE + THIN).map(|number| thin(number, &mut draw)));
+    let answers: Vec<Answer> = questions.par_iter().map(ask).collect();
+    let count = |which: fn(&Answer) -> bool| answers.iter().filter(|answer| which(answer)).count();
+    let growing = count(|answer| answer.grows.is_some());
+    let combined = count(|answer| answer.grows == Some(Response::Other));
+    let refused = count(|answer| answer.refused.is_some());
+    println!(
+        "seed {seed}: {} stacks, {growing} grow ({combined} in combination), {} neutral accelerations, {} stacks \
+         without one, {refused} refused, largest difference {:.1e}",
+        answers.len(),
+        answers.iter().map(|answer| answer.thresholds).sum::<usize>(),
+        count(|answer| answer.without_threshold),
+        answers.iter().map(|answer| answer.difference).fold(0.0, f64::max),
+    );
+    let mut wrong = 0;
+    for (question, answer) in questions.iter().zip(&answers) {
+        for line in answer.disagreements.iter().chain(&answer.refused) {
+            println!("{line}\n    of {question:?}");
+            wrong += 1;
+        }
+    }
+    assert_eq!(wrong, 0, "disagreements and refusals, listed above");
+    assert!(combined >= 10, "only {combined} combination resonances");
+    assert!(growing >= 60 && answers.len() - growing >= 60, "{growing} of {} grow", answers.len());
+}
