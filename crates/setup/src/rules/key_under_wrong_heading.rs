@@ -59,6 +59,22 @@ mod tests {
     }
 
     #[test]
+    fn line_ends_stay_as_they_are() {
+        let text = EXAMPLE
+            .replace("title = \"Example\"\n", "")
+            .replace("[cell]\n", "[cell]\ntitle = \"Example\"\n")
+            .replace('\n', "\r\n");
+        let mended = mended(&text, "key-under-wrong-heading");
+        assert_eq!(mended.matches('\n').count(), mended.matches("\r\n").count());
+    }
+
+    #[test]
+    fn no_move_out_of_an_inline_table() {
+        let text = "model = { wall-drag = true, title = \"Example\" }\n";
+        assert!(first(text, "key-under-wrong-heading").fixes.is_empty());
+    }
+
+    #[test]
     fn no_move_onto_a_key_that_is_there() {
         let text = EXAMPLE.replace("[cell]\n", "[cell]\nfrequency = \"60 Hz\"\n");
         assert!(only(&text, "key-under-wrong-heading").fixes.is_empty());

@@ -30,11 +30,12 @@ pub(crate) fn finding(text: &str, document: &Document, place: &str, span: Span) 
         header.as_ref().is_some_and(|header| !text.get(header.clone()).unwrap_or_default().starts_with('['));
     let Some(at) = at.filter(|_| !inline) else { return finding };
     finding.with_fixes(MEANINGS.map(|(word, said)| {
-        let line = format!("meaning = {}\n", quoted(word));
+        let newline = crate::written::newline(text);
+        let line = format!("meaning = {}{newline}", quoted(word));
         let new_text = match header {
             Some(_) => line,
-            None if text.ends_with('\n') || text.is_empty() => format!("\n[tolerances]\n{line}"),
-            None => format!("\n\n[tolerances]\n{line}"),
+            None if text.ends_with('\n') => format!("{newline}[tolerances]{newline}{line}"),
+            None => format!("{newline}{newline}[tolerances]{newline}{line}"),
         };
         Fix {
             title: format!("Say '{word}': {said}"),

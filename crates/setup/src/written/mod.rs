@@ -168,3 +168,8 @@ pub(crate) fn quoted(text: &str) -> String {
     out.push('"');
     out
 }
+
+/// The line end that a file uses.
+pub(crate) fn newline(text: &str) -> &'static str {
+    if text.contains("\r\n") { "\r\n" } else { "\n" }
+}

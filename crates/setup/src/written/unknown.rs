@@ -87,6 +87,11 @@ pub(super) fn settle(walk: &mut Walk, root: &Table) {
 /// Where the line belongs, when there is just one such place and nothing stands there yet.
 fn destination(walk: &Walk, root: &Table, misplaced: &Misplaced) -> Option<usize> {
     let [home] = misplaced.homes.as_slice() else { return None };
+    // In an inline table or below a dotted key the statement is more than the key and its value.
+    let before_key = walk.text.get(misplaced.statement.start..misplaced.key_span.start)?;
+    if !before_key.trim().is_empty() {
+        return None;
+    }
     let mut sections = walk.document.sections(home.path);
     match (home.form, sections.next(), sections.next()) {
         (Form::Root, _, _) => {
@@ -123,13 +128,16 @@ fn destination(walk: &Walk, root: &Table, misplaced: &Misplaced) -> Option<usize
 
 /// Takes the line with its comment away and puts it in at `at`.
 fn moved(text: &str, misplaced: &Misplaced, at: usize) -> Vec<Edit> {
+    let newline = super::newline(text);
     let mut line =
         text.get(misplaced.statement.clone()).unwrap_or_default().trim_end_matches(['\r', '\n']).to_owned();
     if at > 0 && !text.get(..at).unwrap_or_default().ends_with('\n') {
-        line.insert(0, '\n');
+        line.insert_str(0, newline);
     }
-    let is_first_of_headers = at == 0 && text.trim_start().starts_with('[');
-    line.push_str(if is_first_of_headers { "\n\n" } else { "\n" });
+    line.push_str(newline);
+    if at == 0 && text.trim_start().starts_with('[') {
+        line.push_str(newline);
+    }
     let mut edits = vec![
         Edit { span: at..at, new_text: line },
         Edit { span: misplaced.statement.clone(), new_text: String::new() },
