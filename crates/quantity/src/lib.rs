@@ -5,6 +5,14 @@
 //! problems carry byte ranges *inside that text*.
 
 mod kind;
+mod number;
+mod parse;
+mod print;
+mod refusal;
+mod unit;
 pub mod vocabulary;
 
-pub use kind::{Amplitude, Kind, PressureReference};
+pub use kind::{Amplitude, Kind, PressureReference, si_unit, units};
+pub use parse::{OpenValue, Quantity, Tolerance, parse, parse_list, parse_open, parse_range};
+pub use print::{print, print_amplitude, significant};
+pub use refusal::{Reason, Refusal, TextMend};

@@ -74,3 +74,27 @@ impl BuiltInFluid {
         }
     }
 }
+
+impl Effect {
+    /// Every effect, in the order of the guide.
+    pub const ALL: [Effect; 6] = [
+        Effect::WallDrag,
+        Effect::GasHeatLoss,
+        Effect::SideWallFriction,
+        Effect::GasLayers,
+        Effect::CushionHarmonics,
+        Effect::BodyDamping,
+    ];
+
+    /// The name in the setup file.
+    pub fn name(self) -> &'static str {
+        match self {
+            Effect::WallDrag => "wall-drag",
+            Effect::GasHeatLoss => "gas-heat-loss",
+            Effect::SideWallFriction => "side-wall-friction",
+            Effect::GasLayers => "gas-layers",
+            Effect::CushionHarmonics => "cushion-harmonics",
+            Effect::BodyDamping => "body-damping",
+        }
+    }
+}
