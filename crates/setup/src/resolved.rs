@@ -319,16 +319,25 @@ pub struct DefaultInForce {
 
 impl Default for Limits {
     fn default() -> Self {
-        let given = |value, place: &str| Given {
+        let given = |value, place: &str, source| Given {
             value,
             place: place.to_owned(),
-            origin: Origin::Default("judgement: near the hold limit a level error is amplified by 1/(V − 1)"),
+            origin: Origin::Default(source),
             tolerance: None,
             digits: 17,
         };
+        // The same values and sources as in the declarations; a test holds the two together.
         Limits {
-            hold_margin: given(0.15, "limits.hold-margin"),
-            wave_margin: given(0.10, "limits.wave-margin"),
+            hold_margin: given(
+                0.15,
+                "limits.hold-margin",
+                "judgement: near the hold limit a level error is amplified by 1/(V − 1)",
+            ),
+            wave_margin: given(
+                0.10,
+                "limits.wave-margin",
+                "judgement: twice the usual uncertainty of an accelerometer chain",
+            ),
         }
     }
 }

@@ -74,6 +74,7 @@ fn check(text: &str) {
     for finding in &read.findings {
         assert!(fits(text, &finding.span), "{finding:?}\n{text}");
         assert!(!finding.message.what.is_empty(), "{finding:?}");
+        assert!(topheavy_setup::RULES.iter().any(|rule| rule.id == finding.rule), "{finding:?}");
         assert!(!finding.message.text().to_lowercase().contains("safe"), "{finding:?}");
         for related in &finding.related {
             assert!(fits(text, &related.span), "{finding:?}\n{text}");

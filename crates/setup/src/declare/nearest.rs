@@ -62,7 +62,8 @@ pub fn by_letters<'a>(typed: &str, known: impl IntoIterator<Item = &'a str>) -> 
         .map(|name| (strsim::normalized_damerau_levenshtein(&typed, &name.to_lowercase()), name))
         .filter(|(similarity, _)| *similarity >= SIMILAR)
         .collect();
-    ranked.sort_by(|a, b| b.0.total_cmp(&a.0));
+    ranked.sort_by(|a, b| b.0.total_cmp(&a.0).then_with(|| a.1.cmp(b.1)));
+    ranked.dedup_by(|a, b| a.1 == b.1);
     let clear = match ranked.as_slice() {
         [] => false,
         [_] => true,

@@ -145,6 +145,11 @@ mod tests {
     }
 
     #[test]
+    fn the_declared_limits_are_those_of_the_type() {
+        assert_eq!(crate::understand("").setup.limits, crate::resolved::Limits::default());
+    }
+
+    #[test]
     fn an_unreadable_place_does_not_accept_everywhere() {
         let setup = crate::understand(&EXAMPLE.replace("at = \"layer.oil\"", "at = 3")).setup;
         assert!(setup.accepts.is_empty());

@@ -19,6 +19,9 @@ pub(crate) fn key(path: &str, place: &str, entry: &Entry, near: &Near<'static>, 
     let what = format!("{heading} has no key `{}`.", entry.key);
     let remedy = match near.names.as_slice() {
         [] => String::new(),
+        names if entry.key == "radius" => {
+            format!("Give the {} instead, twice the radius.", listed(&names[..1]))
+        }
         names if near.clear => format!("Did you mean {}?", listed(&names[..1])),
         names => format!("Did you mean {}?", listed(names)),
     };
@@ -29,7 +32,8 @@ pub(crate) fn key(path: &str, place: &str, entry: &Entry, near: &Near<'static>, 
         what,
         &remedy,
     );
-    if taken {
+    // Renaming a radius would halve the cell.
+    if taken || entry.key == "radius" {
         return finding;
     }
     let count = if near.clear { 1 } else { near.names.len() };
@@ -107,6 +111,14 @@ mod tests {
         let text = format!("{EXAMPLE}\n[cell.floor]\nthickness = \"10 mm\"\n");
         let found = only(&text, "key-not-known");
         assert_eq!(found.fixes[0].edits[0].new_text, "base");
+    }
+
+    #[test]
+    fn a_radius_is_not_renamed_to_a_diameter() {
+        let text = EXAMPLE.replace("length = \"120 mm\"\nwidth = \"30 mm\"\n", "radius = \"40 mm\"\n");
+        let text = text.replace("\"rectangular\"", "\"circular\"");
+        let found = only(&text, "key-not-known");
+        assert!(found.fixes.is_empty() && found.message.remedy.contains("twice the radius"), "{found:#?}");
     }
 
     #[test]

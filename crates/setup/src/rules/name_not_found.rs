@@ -11,6 +11,9 @@ use crate::finding::{Finding, Span};
 use crate::rules::{found, listed, replace};
 use crate::written::quoted;
 
+/// Most names that a message lists.
+const MOST_SHOWN: usize = 8;
+
 /// `thing`: what was looked for, with its article ('a layer'). `near`: names that may have been meant.
 /// `value`: the value to replace; `None` when the name is only a part of it.
 pub(crate) fn finding(
@@ -26,8 +29,9 @@ pub(crate) fn finding(
     let remedy = match (near.names.as_slice(), known) {
         ([], []) => String::new(),
         ([], known) => {
-            let more = if known.len() > 8 { " …" } else { "" };
-            format!("Known are {}{more}.", listed(&known[..known.len().min(8)]))
+            let shown: Vec<String> = known.iter().take(MOST_SHOWN).map(|name| format!("'{name}'")).collect();
+            let more = if known.len() > MOST_SHOWN { ", …" } else { "" };
+            format!("There are: {}{more}.", shown.join(", "))
         }
         (near, _) => format!("Did you mean {}?", listed(near)),
     };

@@ -13,7 +13,7 @@ pub(crate) const NEEDS: &str = "a version of the tool that computes it";
 
 /// `check`: what is not checked; `what`: the section or key as typed.
 pub(crate) fn finding(check: &str, place: &str, span: Span, what: &str) -> Finding {
-    let what = format!("{what} is read, but {check} is not computed by this version.");
+    let what = format!("{what} is read, but this version does not compute {check}.");
     super::found("not-looked-at", place, span, what, "")
 }
 

@@ -28,10 +28,7 @@ pub(super) const LIMITS: Section = words(
                 "Least wave margin: (lowest drive that raises waves)/(set drive) − 1.",
             )
             .words(&["wave", "waves", "upper-margin", "wave-limit"])
-            .default(
-                "10 %",
-                "judgement: level and calibration of a common accelerometer chain hold to about 5 %",
-            ),
+            .default("10 %", "judgement: twice the usual uncertainty of an accelerometer chain"),
             Key::new(
                 "hold-probability",
                 Holds::Quantity(Kind::Ratio, ranges::SHARE),
