@@ -3,7 +3,8 @@
 
 use super::key::Bounds;
 
-const SLIP: &str = "outside it the unit or the number is a slip, and every result would rest on it";
+/// The reason that most ranges share.
+pub const SLIP: &str = "outside it the unit or the number is a slip, and every result would rest on it";
 
 /// Thickness of a layer, m.
 pub const LAYER_THICKNESS: Bounds = Bounds::from(1e-6, 10.0, "1 µm to 10 m", SLIP);

@@ -50,7 +50,7 @@ impl Resolver<'_> {
     }
 
     fn finish(mut self) -> (Setup, Vec<Finding>) {
-        self.setup.not_looked_at = self.document.not_looked_at.clone();
+        self.setup.not_looked_at.extend(self.document.not_looked_at.iter().cloned());
         self.setup.open_values = self.document.open_values.clone();
         let looked = |place: &&String| {
             declare::declared(place).is_none_or(|(section, key)| {
@@ -157,7 +157,7 @@ impl Resolver<'_> {
         self.missing(
             &section.place_of(key),
             section.header.clone(),
-            &format!("{} has no `{key}`.", capitalised(&whose)),
+            &format!("{} has no `{key}`.", rules::capitalised(&whose)),
             &format!("Write for example `{key} = {example}`."),
         );
     }
@@ -165,14 +165,6 @@ impl Resolver<'_> {
     /// Pa; the standard atmosphere while it is not known.
     fn ambient_pressure(&self) -> f64 {
         self.setup.ambient.pressure.as_ref().map_or(ambient::STANDARD_PRESSURE, |pressure| pressure.value)
-    }
-}
-
-fn capitalised(text: &str) -> String {
-    let mut characters = text.chars();
-    match characters.next() {
-        Some(first) => first.to_uppercase().chain(characters).collect(),
-        None => String::new(),
     }
 }
 

@@ -115,15 +115,26 @@ pub(crate) fn refused(key: &Key, place: &str, at: Span, value: Span, refusal: &R
         .mends
         .iter()
         .map(|mend| replace(mend.title.clone(), mend.keeps_meaning, value.clone(), quoted(&mend.text)));
-    // The refusal itself says what to do.
-    let mut finding = found(rule, place, at, what, "").with_fixes(fixes);
-    finding.message.remedy = String::new();
-    finding
+    let remedy = if refusal.mends.is_empty() {
+        format!("Write for example `{} = {}`.", key.name, key.example)
+    } else {
+        String::new()
+    };
+    found(rule, place, at, what, &remedy).with_fixes(fixes)
 }
 
 fn sentence(text: &str) -> String {
     let text = text.trim();
     if text.ends_with(['.', '!', '?']) { text.to_owned() } else { format!("{text}.") }
+}
+
+/// With a capital letter at the start.
+pub(crate) fn capitalised(text: &str) -> String {
+    let mut characters = text.chars();
+    match characters.next() {
+        Some(first) => first.to_uppercase().chain(characters).collect(),
+        None => String::new(),
+    }
 }
 
 /// 'a', 'a or b', 'a, b or c', each as code.

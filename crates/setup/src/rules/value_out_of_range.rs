@@ -6,7 +6,7 @@
 //!
 //! What to do: Check the number and its unit.
 
-use crate::declare::{Bounds, Key};
+use crate::declare::{Bounds, Key, ranges};
 use crate::finding::{Finding, Span};
 use crate::rules::found;
 use quantity::Kind;
@@ -27,8 +27,11 @@ pub(crate) fn finding(
         Kind::Pressure => quantity::print(value, Kind::AbsolutePressure, 3),
         kind => quantity::print(value, kind, 3),
     };
-    let what = format!("`{}` is {printed}, outside its range of {}: {}.", key.name, bounds.said, bounds.why);
+    let what = format!("`{}` is {printed}, outside its range of {}.", key.name, bounds.said);
     let mut finding = found("value-out-of-range", place, span, what, "");
+    if bounds.why != ranges::SLIP {
+        finding.message.why = super::sentence(&super::capitalised(bounds.why));
+    }
     finding.values.push(("value_si", value));
     finding
 }
