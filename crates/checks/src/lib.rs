@@ -3,6 +3,17 @@
 //!
 //! A rule reads derived results and never calls a solver; only `derived` does, through the caches of [`Engine`].
 
+mod analysis;
+mod changes;
 pub mod derived;
+mod engine;
+mod hover;
+mod rules;
+mod words;
 
+pub use analysis::{Analysis, Verdict, analyse};
+pub use changes::{changes, offer};
 pub use derived::Derived;
+pub use engine::Engine;
+pub use hover::{HoverText, hover};
+pub use rules::{RULES, Rule, all_rules, why};

@@ -1,5 +1,18 @@
 //! What was computed for one setup. SI, peak amplitudes, e^{+iωt}, layers and slabs top first, no spans.
 
+mod build;
+mod figures;
+mod run;
+#[cfg(test)]
+pub(crate) mod testing;
+mod trouble;
+mod window;
+
+pub(crate) use run::{Outcome, derive};
+pub(crate) use trouble::Trouble;
+#[cfg(test)]
+pub(crate) use window::drive_window;
+
 use std::sync::Arc;
 
 pub use physics::stability::layered::Response;
@@ -69,6 +82,8 @@ pub struct LayerState {
     pub viscosity: f64,
     /// Against gas, N/m; `None` for a gas.
     pub surface_tension: Option<f64>,
+    /// Why its viscosity depends on how fast it is sheared, where it does.
+    pub shear_dependent: Option<String>,
     /// Where density, viscosity and tension come from.
     pub sources: Vec<String>,
 }

@@ -1,0 +1,306 @@
+//! The stack that the physics works on, from the resolved setup.
+//!
+//! Densities and thicknesses of gas follow the static pressure, and that follows the weight of the layers: both are
+//! repeated until the pressures stand still (two or three rounds; the weight of the gas is some 1e-4 of the rest).
+
+use super::LayerState;
+use super::figures::{LayerFigures, Reader, made_of, phase};
+use super::trouble::Trouble;
+use physics::materials::{self, Material};
+use physics::response::static_pressures;
+use physics::stack::{Cell, Gas, Layer, Plan, Stack};
+use quantity::vocabulary::{BuiltInFluid, Phase};
+use setup::resolved::{self, LayerFluid, Setup};
+
+/// The pressures stand still when none changes by more than this share.
+const STILL: f64 = 1e-12;
+const MOST_ROUNDS: usize = 50;
+
+/// A complete stack with what the layers are.
+pub(super) struct Built {
+    pub stack: Stack,
+    pub states: Vec<LayerState>,
+}
+
+/// `None` when something that it needs is missing; the cause is in `troubles` or among the findings about the text.
+pub(super) fn build(setup: &Setup, troubles: &mut Vec<Trouble>) -> Option<Built> {
+    if setup.layers.is_empty() || setup.is_unreadable("layer") {
+        return None;
+    }
+    let ambient = Ambient::read(setup, troubles);
+    let plan = plan(setup);
+    let start = ambient.as_ref().map_or(101_325.0, |ambient| ambient.pressure);
+    let layers: Vec<_> = setup
+        .layers
+        .iter()
+        .map(|layer| read(setup, layer, start, ambient.as_ref(), plan, troubles))
+        .collect();
+    let tensions = tensions(setup, &layers, troubles);
+    let (ambient, plan, tensions) = (ambient?, plan?, tensions?);
+    let mut layers: Vec<Read> = layers.into_iter().collect::<Option<_>>()?;
+    let cell = cell(setup, plan, &layers)?;
+    let mut open_face = |is_open: bool, read: Option<&Read>| match read {
+        Some(read) if is_open && read.layer.phase() == Phase::Liquid => own_tension(read, troubles),
+        _ => Some(0.0),
+    };
+    let top_tension = open_face(!cell.sealed_top, layers.first())?;
+    let bottom_tension = open_face(cell.open_bottom, layers.last())?;
+    let mut stack = Stack {
+        ambient_pressure: ambient.pressure,
+        ambient_density: ambient.density,
+        ambient_viscosity: ambient.viscosity,
+        gravity: ambient.gravity,
+        cell,
+        top_tension,
+        bottom_tension,
+        layers: layers.iter().map(|read| read.layer.clone()).collect(),
+        tensions,
+        effects_off: setup.effects_off.iter().map(|given| given.value).collect(),
+    };
+    let mut pressures = vec![start; stack.layers.len()];
+    for _ in 0..MOST_ROUNDS {
+        let found = match static_pressures(&stack) {
+            Ok(found) => found,
+            Err(error) => {
+                troubles.push(Trouble::NoResponse { place: "layer".to_owned(), detail: error.to_string() });
+                return None;
+            }
+        };
+        let still = found.iter().zip(&pressures).all(|(new, old)| (new - old).abs() <= STILL * old.abs());
+        pressures = found;
+        if still {
+            break;
+        }
+        for ((read, layer), &pressure) in layers.iter_mut().zip(&setup.layers).zip(&pressures) {
+            *read = self::read(setup, layer, pressure, Some(&ambient), Some(plan), troubles)?;
+        }
+        stack.layers = layers.iter().map(|read| read.layer.clone()).collect();
+        if setup.cell.as_ref().is_some_and(|cell| cell.height.is_none()) {
+            stack.cell.height = stack.layers.iter().map(|layer| layer.thickness).sum();
+        }
+    }
+    let states = layers.into_iter().zip(&setup.layers).zip(pressures);
+    let states = states.map(|((read, layer), pressure)| read.state(layer, pressure)).collect();
+    Some(Built { stack, states })
+}
+
+/// What surrounds the cell.
+struct Ambient {
+    temperature: f64,
+    pressure: f64,
+    gravity: f64,
+    density: f64,
+    viscosity: f64,
+}
+
+impl Ambient {
+    fn read(setup: &Setup, troubles: &mut Vec<Trouble>) -> Option<Ambient> {
+        let temperature = setup.ambient.temperature.as_ref()?.value;
+        let pressure = setup.ambient.pressure.as_ref()?.value;
+        let gravity = setup.ambient.gravity.as_ref()?.value;
+        let air = Material { fluid: BuiltInFluid::Air, mass_fraction: None, grade: None };
+        let figures = materials::density(&air, temperature, pressure).and_then(|density| {
+            Ok((density.value, materials::viscosity(&air, temperature, pressure)?.value))
+        });
+        match figures {
+            Ok((density, viscosity)) => Some(Ambient { temperature, pressure, gravity, density, viscosity }),
+            Err(unavailable) => {
+                troubles.push(Trouble::OutsideRange {
+                    place: "ambient".to_owned(),
+                    figure: "air",
+                    detail: unavailable.to_string(),
+                });
+                None
+            }
+        }
+    }
+}
+
+/// One layer, read.
+struct Read {
+    layer: Layer,
+    figures: LayerFigures,
+    temperature: f64,
+}
+
+impl Read {
+    fn state(self, written: &resolved::Layer, pressure: f64) -> LayerState {
+        let mut sources = vec![
+            format!("density: {}", self.figures.density.source),
+            format!("viscosity: {}", self.figures.viscosity.source),
+        ];
+        if let Some(tension) = &self.figures.tension {
+            sources.push(format!("surface tension: {}", tension.source));
+        }
+        if let Some((index, diffusivity)) = &self.figures.heat {
+            sources.push(format!("adiabatic index: {}", index.source));
+            sources.push(format!("thermal diffusivity: {}", diffusivity.source));
+        }
+        LayerState {
+            name: written.name.clone(),
+            place: written.place.clone(),
+            phase: self.layer.phase(),
+            made_of: made_of(written),
+            thickness: self.layer.thickness,
+            temperature: self.temperature,
+            pressure,
+            density: self.layer.density,
+            viscosity: self.layer.viscosity,
+            surface_tension: self.figures.tension.map(|tension| tension.value),
+            shear_dependent: None,
+            sources,
+        }
+    }
+}
+
+fn read(
+    setup: &Setup,
+    layer: &resolved::Layer,
+    pressure: f64,
+    ambient: Option<&Ambient>,
+    plan: Option<Plan>,
+    troubles: &mut Vec<Trouble>,
+) -> Option<Read> {
+    let lost = |key: &str| setup.is_unreadable(&format!("{}.{key}", layer.place));
+    if lost("temperature") {
+        return None;
+    }
+    let temperature =
+        layer.temperature.as_ref().map(|given| given.value).or(ambient.map(|a| a.temperature))?;
+    let figures = Reader { setup, layer, temperature, pressure, troubles }.read()?;
+    let (ambient, plan) = (ambient?, plan?);
+    let thickness = thickness(layer, pressure, temperature, ambient, plan);
+    if ["thickness", "volume", "filled-volume", "vented", "pressure", "polytropic-exponent"]
+        .into_iter()
+        .any(lost)
+    {
+        return None;
+    }
+    let gas = figures.heat.as_ref().map(|(index, diffusivity)| Gas {
+        adiabatic_index: index.value,
+        thermal_diffusivity: diffusivity.value,
+        polytropic_exponent: layer.polytropic_exponent.as_ref().map(|given| given.value),
+        vented: layer.vented.value,
+        pressure: layer.pressure.as_ref().map(|given| given.value),
+    });
+    let layer = Layer {
+        name: layer.name.clone(),
+        thickness: thickness?,
+        density: figures.density.value,
+        viscosity: figures.viscosity.value,
+        gas,
+    };
+    Some(Read { layer, figures, temperature })
+}
+
+/// A filled volume was drawn at ambient temperature and pressure; under the weight of the layers above it shrinks
+/// as an ideal gas.
+fn thickness(
+    layer: &resolved::Layer,
+    pressure: f64,
+    temperature: f64,
+    ambient: &Ambient,
+    plan: Plan,
+) -> Option<f64> {
+    if let Some(thickness) = &layer.thickness {
+        return Some(thickness.value);
+    }
+    if let Some(volume) = &layer.volume {
+        return Some(volume.value / plan.area());
+    }
+    let filled = layer.filled_volume.as_ref()?;
+    Some(filled.value * (ambient.pressure / pressure) * (temperature / ambient.temperature) / plan.area())
+}
+
+fn plan(setup: &Setup) -> Option<Plan> {
+    match &setup.cell.as_ref()?.plan {
+        resolved::Plan::Rectangular { length, width } => {
+            Some(Plan::Rectangle { length: length.value, width: width.value })
+        }
+        resolved::Plan::Circular { diameter } => Some(Plan::Circle { diameter: diameter.value }),
+    }
+}
+
+fn cell(setup: &Setup, plan: Plan, layers: &[Read]) -> Option<Cell> {
+    let cell = setup.cell.as_ref()?;
+    if ["cell.height", "cell.top", "cell.bottom"].into_iter().any(|place| setup.is_unreadable(place)) {
+        return None;
+    }
+    let sum = layers.iter().map(|read| read.layer.thickness).sum();
+    Some(Cell {
+        plan,
+        height: cell.height.as_ref().map_or(sum, |height| height.value),
+        sealed_top: cell.sealed_top.value,
+        open_bottom: cell.open_bottom.value,
+    })
+}
+
+/// One tension for every pair of neighbours: what `[[interface]]` says; else against gas the liquid's own, none
+/// between gases or between layers of one liquid. Between two liquids it is never invented.
+fn tensions(setup: &Setup, layers: &[Option<Read>], troubles: &mut Vec<Trouble>) -> Option<Vec<f64>> {
+    let pairs: Vec<_> = setup
+        .layers
+        .windows(2)
+        .zip(layers.windows(2))
+        .map(|(written, read)| match (written, read) {
+            ([above, below], [first, second]) => {
+                tension(setup, (above, first.as_ref()), (below, second.as_ref()), troubles)
+            }
+            _ => None,
+        })
+        .collect();
+    pairs.into_iter().collect()
+}
+
+fn tension(
+    setup: &Setup,
+    (above, first): (&resolved::Layer, Option<&Read>),
+    (below, second): (&resolved::Layer, Option<&Read>),
+    troubles: &mut Vec<Trouble>,
+) -> Option<f64> {
+    let joins = |between: &[String; 2]| {
+        (between[0] == above.name && between[1] == below.name)
+            || (between[0] == below.name && between[1] == above.name)
+    };
+    if let Some(interface) = setup.interfaces.iter().find(|interface| joins(&interface.between)) {
+        return Some(interface.tension.value);
+    }
+    let lost = [(&above.name, &below.name), (&below.name, &above.name)]
+        .iter()
+        .any(|(one, other)| setup.is_unreadable(&format!("interface.{one}|{other}.tension")));
+    if lost || setup.is_unreadable("interface") {
+        return None;
+    }
+    match (phase(setup, above)?, phase(setup, below)?) {
+        (Phase::Gas, Phase::Gas) => Some(0.0),
+        (Phase::Liquid, Phase::Gas) => own_tension(first?, troubles),
+        (Phase::Gas, Phase::Liquid) => own_tension(second?, troubles),
+        (Phase::Liquid, Phase::Liquid) if same_liquid(above, below) => Some(0.0),
+        (Phase::Liquid, Phase::Liquid) => {
+            troubles.push(Trouble::TensionMissing { above: above.name.clone(), below: below.name.clone() });
+            None
+        }
+    }
+}
+
+/// The surface tension of a liquid that meets gas; where it is not known the reason is noted once.
+fn own_tension(read: &Read, troubles: &mut Vec<Trouble>) -> Option<f64> {
+    if read.figures.tension.is_none() {
+        let new = read.figures.why_no_tension.iter().filter(|why| !troubles.contains(why)).cloned();
+        let new: Vec<Trouble> = new.collect();
+        troubles.extend(new);
+    }
+    read.figures.tension.as_ref().map(|tension| tension.value)
+}
+
+fn same_liquid(one: &resolved::Layer, other: &resolved::Layer) -> bool {
+    let value = |given: &Option<resolved::Given<f64>>| given.as_ref().map(|given| given.value);
+    match (&one.fluid, &other.fluid) {
+        (Some(LayerFluid::Own(a)), Some(LayerFluid::Own(b))) => a == b,
+        (
+            Some(LayerFluid::BuiltIn { fluid: a, mass_fraction: fraction_a, grade: grade_a }),
+            Some(LayerFluid::BuiltIn { fluid: b, mass_fraction: fraction_b, grade: grade_b }),
+        ) => a == b && value(fraction_a) == value(fraction_b) && value(grade_a) == value(grade_b),
+        _ => false,
+    }
+}
