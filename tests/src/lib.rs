@@ -2,3 +2,5 @@
 
 pub mod draw;
 pub mod galerkin;
+pub mod onset;
+pub mod stacks;
