@@ -52,6 +52,11 @@ fn every_key_is_declared_in_full() {
             for word in key.words {
                 let shadowed = section.keys.iter().any(|other| other.name == *word);
                 assert!(!shadowed, "{name}: `{word}` is a key of the same section and never a near miss");
+                let at_top = declarations()[0].keys.iter().any(|top| top.name == *word);
+                assert!(
+                    !at_top,
+                    "{name}: `{word}` is a top-level key, which a slip of the place is taken for"
+                );
                 assert_eq!(*word, word.to_lowercase(), "{name}: words are compared in lower case");
             }
             if let Some(bounds) = topheavy_setup::declare::bounds(&key.holds) {
@@ -158,4 +163,66 @@ fn what_means_the_same_is_equal() {
     let text = EXAMPLES[0];
     let other = text.replace("\"20 mm\"", "\"20   mm\"").replace("[drive]", "# a comment\n[drive]");
     assert_eq!(read(text).setup, read(&other).setup);
+}
+
+/// Every word that a declaration says people type is told apart and one of its fixes brings the key back.
+#[test]
+fn every_word_that_people_type_leads_to_its_key() {
+    for text in EXAMPLES {
+        for (place, spot) in read(text).places.iter() {
+            let (Some(key), Some(span)) = (spot.declaration, spot.key.clone()) else { continue };
+            for word in key.words.iter().filter(|word| **word != "radius") {
+                let mut typed = text.to_owned();
+                typed.replace_range(span.clone(), word);
+                let findings = read(&typed).findings;
+                assert_eq!(findings.len(), 1, "`{word}` for {place}: {findings:#?}");
+                let restores = findings[0].fixes.iter().any(|fix| {
+                    let mut mended = typed.clone();
+                    for edit in fix.edits.iter().rev() {
+                        mended.replace_range(edit.span.clone(), &edit.new_text);
+                    }
+                    mended == text
+                });
+                assert!(restores, "`{word}` for {place}: {findings:#?}");
+            }
+        }
+    }
+}
+
+/// A key that is taken away is missed by at most one finding, and never by the physics in silence.
+#[test]
+fn a_key_taken_away_makes_at_most_one_finding() {
+    for text in EXAMPLES {
+        for (place, spot) in read(text).places.iter().filter(|(_, spot)| spot.declaration.is_some()) {
+            let without = format!("{}{}", &text[..spot.statement.start], &text[spot.statement.end..]);
+            let findings: Vec<Finding> = read(&without).findings;
+            // A layer that loses its name is called in vain by its interface and by an accept.
+            let most = if place == "layer.oil.name" { 2 } else { 1 };
+            assert!(findings.len() <= most, "without {place}: {findings:#?}");
+        }
+    }
+}
+
+/// A value that cannot be read makes one finding, and nothing downstream complains.
+#[test]
+fn a_broken_value_makes_one_finding() {
+    for text in EXAMPLES {
+        for (place, spot) in read(text).places.iter() {
+            let Some(value) = spot.value.clone() else { continue };
+            for broken in ["\"@\"", "[[]]", "nan"] {
+                let free_text = matches!(
+                    spot.declaration.map(|key| key.holds),
+                    Some(topheavy_setup::declare::Holds::Text | topheavy_setup::declare::Holds::Name)
+                );
+                let reference = spot.declaration.is_some_and(|key| key.name == "fluid");
+                if broken == "\"@\"" && (free_text || reference) {
+                    continue;
+                }
+                let mut typed = text.to_owned();
+                typed.replace_range(value.clone(), broken);
+                let findings: Vec<Finding> = read(&typed).findings;
+                assert_eq!(findings.len(), 1, "{place} = {broken}: {findings:#?}");
+            }
+        }
+    }
 }

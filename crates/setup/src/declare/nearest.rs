@@ -18,19 +18,23 @@ const SIMILAR: f64 = 0.6;
 /// The first is clear when the second is this much less similar.
 const LEAD: f64 = 0.1;
 
-/// The key of a section that was meant by a name it does not have.
-pub fn key(section: &[Key], typed: &str) -> Near<'static> {
+/// The key of a section that was meant by a name it does not have. A key that is `taken` already is meant only when
+/// no other is.
+pub fn key(section: &[Key], typed: &str, taken: impl Fn(&str) -> bool) -> Near<'static> {
     let typed = normal(typed);
     if let Some(key) = section.iter().find(|key| key.name == typed) {
         return Near { names: vec![key.name], clear: true };
     }
-    let meant: Vec<&str> =
-        section.iter().filter(|key| key.words.contains(&typed.as_str())).map(|key| key.name).collect();
-    if !meant.is_empty() {
-        let clear = meant.len() == 1;
-        return Near { names: meant, clear };
+    let meant = |key: &&Key| key.words.contains(&typed.as_str());
+    let mut names: Vec<&str> = section.iter().filter(meant).map(|key| key.name).collect();
+    if names.is_empty() {
+        return by_letters(&typed, section.iter().map(|key| key.name));
     }
-    by_letters(&typed, section.iter().map(|key| key.name))
+    if !names.iter().all(|name| taken(name)) {
+        names.retain(|name| !taken(name));
+    }
+    let clear = names.len() == 1;
+    Near { names, clear }
 }
 
 /// The header that was meant by one that is not known.
@@ -82,7 +86,7 @@ mod tests {
     use crate::declare::section;
 
     fn meant(path: &str, typed: &str) -> Near<'static> {
-        key(section(path).unwrap().keys, typed)
+        key(section(path).unwrap().keys, typed, |_| false)
     }
 
     #[test]
@@ -112,6 +116,13 @@ mod tests {
         let near = meant("drive", "amplitude");
         assert_eq!(near.names, ["acceleration", "displacement"]);
         assert!(!near.clear, "an amplitude may be of acceleration or of displacement");
+    }
+
+    #[test]
+    fn a_key_that_is_there_is_not_meant_again() {
+        let keys = section("drive").unwrap().keys;
+        let near = key(keys, "amplitude", |name| name == "acceleration");
+        assert_eq!(near, Near { names: vec!["displacement"], clear: true });
     }
 
     #[test]

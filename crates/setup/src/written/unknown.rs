@@ -42,7 +42,7 @@ pub(super) fn in_section(
 
 fn unknown_key(walk: &mut Walk, path: &str, keys: &'static [Key], place: &str, table: &Table, entry: &Entry) {
     let top_level = declare::section("").and_then(|root| root.key(&entry.key)).is_some();
-    let near = nearest::key(keys, &entry.key);
+    let near = nearest::key(keys, &entry.key, |name| table.get(name).is_some());
     let by_meaning = !top_level && !near.names.is_empty() && meant(keys, &entry.key);
     let homes = homes(&entry.key, path);
     if !by_meaning && !homes.is_empty() {

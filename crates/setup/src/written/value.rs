@@ -304,7 +304,8 @@ impl Reader<'_, '_> {
                         .is_some();
                 }
                 None => {
-                    let near = crate::declare::nearest::key(keys, &entry.key);
+                    let near =
+                        crate::declare::nearest::key(keys, &entry.key, |name| table.get(name).is_some());
                     let taken = near.names.first().is_some_and(|name| table.get(name).is_some());
                     let finding = rules::key_not_known::key(self.key.name, self.place, entry, &near, taken);
                     self.walk.document.findings.push(finding);

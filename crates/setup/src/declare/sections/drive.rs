@@ -213,7 +213,7 @@ pub(super) const STAGE: Section = later(
             Form::Repeated,
             "A stage of the start-up. It changes what it names and keeps the rest; the setup itself is the last stage.",
             &[
-                Key::new("name", Holds::Name, "\"fill\"", "Name of the stage.").words(&["label", "title"]),
+                Key::new("name", Holds::Name, "\"fill\"", "Name of the stage.").words(&["label"]),
                 Key::new(
                     "drive",
                     Holds::Anything,

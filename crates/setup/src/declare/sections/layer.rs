@@ -47,7 +47,7 @@ pub(super) const LAYER: Section = words(
         "One layer of the stack. The first is the top one: the file reads as the cell looks from the side.",
         &[
             Key::new("name", Holds::Name, "\"oil\"", "Name of the layer, by which interfaces, findings and reports call it. Left out: 'layer 2' by its position.")
-                .words(&["label", "id", "title"]),
+                .words(&["label", "id"]),
             Key::new("fluid", Holds::Reference(NameOf::Fluid), "\"silicone oil\"",
                 "What it is made of: one of the tool's own fluids or a `[fluid.NAME]`. Left out: `phase` and all figures stand in the layer.")
                 .words(&["material", "liquid", "gas", "medium", "substance", "made-of"]).sometimes(),
