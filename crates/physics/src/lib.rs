@@ -4,5 +4,7 @@
 //! Conventions everywhere: SI units, peak amplitudes, e^{+iωt}, effective gravity g(t) = g + A cos ωt, layers of
 //! a stack listed **top first** as the setup file has them.
 
+mod complex;
+pub mod response;
 pub mod stability;
 pub mod stack;

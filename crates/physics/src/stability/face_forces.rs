@@ -20,6 +20,7 @@
 //! kH from 1e-4 to ∞ (tests compare with the Stokes and the inviscid limits and with a direct 4 × 4 solution).
 
 use super::layered::FluidLayer;
+use crate::complex::tanh;
 use num_complex::Complex64;
 
 /// Face coefficients of a layer; `near` acts on a face by its own motion, `far` by that of the other face.
@@ -117,17 +118,6 @@ impl LayerAtWavenumber {
         let coth = (t + 1.0 / t) / 2.0;
         (self.density * self.k * coth, -self.density * self.k / (self.k * h).sinh())
     }
-}
-
-/// tanh of a complex number with Re z ≥ 0 large or small, without overflow.
-fn tanh(z: Complex64) -> Complex64 {
-    if z.re < 0.0 {
-        return -tanh(-z);
-    }
-    let e = (-2.0 * z.re).exp();
-    let (sin, cos) = (2.0 * z.im).sin_cos();
-    let denominator = 1.0 + e * (2.0 * cos + e);
-    Complex64::new(-(-4.0 * z.re).exp_m1() / denominator, 2.0 * e * sin / denominator)
 }
 
 /// The odd part's Φ in thin layers, by the series of x coth x (Abramowitz & Stegun 4.5.67), where the closed form
