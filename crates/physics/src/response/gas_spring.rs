@@ -72,8 +72,8 @@ mod tests {
 
     #[test]
     fn largest_loss_is_where_the_half_thickness_is_1_21_thermal_layers() {
-        let (alpha, omega) = (2.14e-5, 2.0 * PI * 100.0);
-        let delta = (2.0 * alpha / omega as f64).sqrt();
+        let (alpha, omega): (f64, f64) = (2.14e-5, 2.0 * PI * 100.0);
+        let delta = (2.0 * alpha / omega).sqrt();
         let n = polytropic_exponent(WIDE, 2.0 * 1.21 * delta, 1.4, alpha, omega);
         assert!((n.im / n.re - 0.136666).abs() < 1e-6 && (n.re - 1.13605).abs() < 1e-5, "{n}");
         for factor in [0.97, 1.03] {

@@ -49,7 +49,7 @@ pub fn static_pressures(stack: &Stack) -> Result<Statics, Crushed> {
     let mut conflicts = Vec::new();
     // Pressure at the upper face of the next layer, going down.
     let mut carried = (!stack.cell.sealed_top).then_some(stack.ambient_pressure);
-    for i in 0..n {
+    for (i, mean) in mean.iter_mut().enumerate() {
         let half = weight(i) / 2.0;
         match (known(i), carried) {
             (Some(stated), from_above) => {
@@ -58,11 +58,11 @@ pub fn static_pressures(stack: &Stack) -> Result<Statics, Crushed> {
                 {
                     conflicts.push(Conflict { layer: i, stated, carried: above + half });
                 }
-                mean[i] = stated;
+                *mean = stated;
                 carried = Some(stated + half);
             }
             (None, Some(above)) => {
-                mean[i] = above + half;
+                *mean = above + half;
                 carried = Some(above + 2.0 * half);
             }
             (None, None) => {}
@@ -87,8 +87,8 @@ pub fn static_pressures(stack: &Stack) -> Result<Statics, Crushed> {
             let gas = stack.layers.iter().position(|layer| layer.gas.is_some()).unwrap_or(0);
             assumed = Some(gas);
             let mut face = stack.ambient_pressure - weight(gas) / 2.0;
-            for i in gas..n {
-                mean[i] = face + weight(i) / 2.0;
+            for (i, mean) in mean.iter_mut().enumerate().skip(gas) {
+                *mean = face + weight(i) / 2.0;
                 face += weight(i);
             }
             Some((gas, stack.ambient_pressure - weight(gas) / 2.0))

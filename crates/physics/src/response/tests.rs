@@ -116,7 +116,9 @@ fn a_complex_spring_gives_unit_gain_where_the_textbook_says() {
 #[test]
 fn worked_designs_are_met() {
     let s1000 = |name: &str, mm: f64| oil(name, mm, 971.0, 1e-3);
-    let cases: Vec<(&str, Stack, f64, Vec<f64>, Vec<f64>)> = vec![
+    // Name, stack, frequency, T of each slab, chain modes.
+    type Design = (&'static str, Stack, f64, Vec<f64>, Vec<f64>);
+    let cases: Vec<Design> = vec![
         (
             "D1",
             stack(square(50.0), vec![s1000("oil", 15.0), gas("air", 40.0)]),
@@ -170,7 +172,8 @@ fn worked_designs_are_met() {
 }
 
 /// F3 of the worked designs sits on resonance (51.0 Hz against 50), where the loss rules: T = 7.9 with heat lost to
-/// the two faces only, as that page computed it. The side walls of this tall cushion have four times the area.
+/// the two faces only and wall drag to first order in the Stokes layer, as that page computed it. The side walls of
+/// this tall cushion have four times the area of its faces, and a Stokes layer of 2.5 mm is not thin in 50 mm.
 #[test]
 fn on_resonance_the_side_walls_take_heat_too() {
     let stack = stack(square(50.0), vec![oil("oil", 15.0, 971.0, 1e-3), gas("air", 95.0)]);
@@ -180,14 +183,16 @@ fn on_resonance_the_side_walls_take_heat_too() {
     let (omega, state, m) = (drive.omega(), found.cushions[0], found.slabs[0].mass_per_area);
     let wide = Plan::Rectangle { length: 1e6, width: 1e6 };
     let faces_only = super::polytropic_exponent(wide, 0.095, 1.4, 2.2e-5, omega);
-    let drag = super::wall_drag(stack.cell.plan, 1e-3, omega);
-    let gain = |n: Complex64| {
+    let stokes = (2.0 * 1e-3 / omega).sqrt() * (4.0 / 0.05) / 2.0;
+    let gain = |n: Complex64, drag: Complex64| {
         let k = n * state.pressure / 0.095;
         ((k - omega * omega * m * drag) / (k - omega * omega * m * (1.0 + drag))).norm()
     };
-    assert!((gain(faces_only) - 7.9).abs() < 0.1, "{}", gain(faces_only));
-    assert!((gain(state.polytropic) - found.slabs[0].amplification.norm()).abs() < 1e-9);
-    assert!(found.slabs[0].amplification.norm() < 7.0);
+    let simple = gain(faces_only, Complex64::new(stokes, -stokes));
+    assert!((simple - 7.9).abs() < 0.05, "{simple}");
+    let full = gain(state.polytropic, super::wall_drag(stack.cell.plan, 1e-3, omega));
+    assert!((full - found.slabs[0].amplification.norm()).abs() < 1e-9);
+    assert!(full < 7.0);
 }
 
 #[test]

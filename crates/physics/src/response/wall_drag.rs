@@ -46,8 +46,8 @@ mod tests {
     #[test]
     fn thin_layers_add_equal_inertia_and_loss_by_perimeter_over_area() {
         // δ·perimeter/(2·area) each, δ = √(2ν/ω).
-        let (nu, omega) = (1e-6, TAU * 100.0);
-        let delta = (2.0 * nu / omega as f64).sqrt();
+        let (nu, omega): (f64, f64) = (1e-6, TAU * 100.0);
+        let delta = (2.0 * nu / omega).sqrt();
         for (plan, per_area) in [
             (Plan::Rectangle { length: 0.05, width: 0.03 }, 2.0 * (0.05 + 0.03) / (0.05 * 0.03)),
             (Plan::Circle { diameter: 0.04 }, 4.0 / 0.04),
