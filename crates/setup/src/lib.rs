@@ -5,8 +5,43 @@
 
 pub mod declare;
 pub mod finding;
+mod places;
+mod resolve;
 pub mod resolved;
 pub mod rule;
+mod rules;
 pub mod tree;
+mod whole;
+mod written;
 
 pub use declare::{declarations, hover_text, schema};
+pub use places::{Places, Spot};
+pub use rules::RULES;
+pub use rules::file_not_readable::{Cause, LARGEST_FILE, file_not_readable, text_of};
+
+use finding::Finding;
+
+/// What came of reading one setup file.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Understanding {
+    /// The resolved setup.
+    pub setup: resolved::Setup,
+    /// What is wrong with the text, in the order of the text.
+    pub findings: Vec<Finding>,
+    /// Where each place stands.
+    pub places: Places,
+    /// The tree with its slips.
+    pub reading: tree::Reading,
+}
+
+/// Reads a setup file, whatever it holds: text → tree → as written → resolved. Never fails; what is wrong is among
+/// the findings.
+pub fn understand(text: &str) -> Understanding {
+    let reading = whole::read(text);
+    let mut document = written::walk(text, &reading);
+    let (setup, found) = resolve::resolve(text, &document);
+    let mut findings = std::mem::take(&mut document.findings);
+    findings.extend(found);
+    findings.sort_by_key(|finding| (finding.span.start, finding.span.end));
+    Understanding { setup, findings, places: document.places, reading }
+}

@@ -2,6 +2,7 @@
 
 use super::Document;
 use crate::declare::{self, Form};
+use crate::finding::Related;
 use crate::places::Spot;
 use crate::rules;
 use crate::tree::{Reading, Slip, SlipKind};
@@ -10,7 +11,13 @@ use crate::tree::{Reading, Slip, SlipKind};
 pub(super) fn mark(text: &str, reading: &Reading, document: &mut Document) {
     for slip in &reading.slips {
         let place = place_of(slip, document);
-        document.findings.push(rules::slip(text, slip, &place));
+        let mut finding = rules::slip(text, slip, &place);
+        let first = document.places.exact(&place).and_then(|spot| spot.key.clone());
+        if let Some(span) = first.filter(|_| slip.kind == SlipKind::GivenTwice && finding.related.is_empty())
+        {
+            finding.related.push(Related { span, message: "Given here first.".to_owned() });
+        }
+        document.findings.push(finding);
         if place.is_empty() {
             mark_unknown(text, slip.span.start, slip.kind, document);
         } else {
