@@ -6,20 +6,25 @@
 use super::LayerState;
 use super::figures::{LayerFigures, Reader, made_of, phase};
 use super::trouble::Trouble;
+use crate::words;
 use physics::materials::{self, Material};
-use physics::response::static_pressures;
+use physics::response::{Conflict, Statics, static_pressures};
 use physics::stack::{Cell, Gas, Layer, Plan, Stack};
 use quantity::vocabulary::{BuiltInFluid, Phase};
-use setup::resolved::{self, LayerFluid, Setup};
+use setup::resolved::{self, DefaultInForce, LayerFluid, Setup};
 
 /// The pressures stand still when none changes by more than this share.
 const STILL: f64 = 1e-12;
 const MOST_ROUNDS: usize = 50;
+/// Two statements of one size agree within this share (judgement: three figures are written) and their tolerances.
+const ROUNDING: f64 = 0.01;
 
 /// A complete stack with what the layers are.
 pub(super) struct Built {
     pub stack: Stack,
     pub states: Vec<LayerState>,
+    /// The pressure that was assumed because none is known.
+    pub closed_at_ambient: Option<DefaultInForce>,
 }
 
 /// `None` when something that it needs is missing; the cause is in `troubles` or among the findings about the text.
@@ -58,16 +63,25 @@ pub(super) fn build(setup: &Setup, troubles: &mut Vec<Trouble>) -> Option<Built>
         effects_off: setup.effects_off.iter().map(|given| given.value).collect(),
     };
     let mut pressures = vec![start; stack.layers.len()];
+    let mut statics = None;
     for _ in 0..MOST_ROUNDS {
         let found = match static_pressures(&stack) {
             Ok(found) => found,
-            Err(error) => {
-                troubles.push(Trouble::NoResponse { place: "layer".to_owned(), detail: error.to_string() });
+            Err(crushed) => {
+                let detail = format!(
+                    "\"{}\" would have a pressure of {} kPa absolute",
+                    stack.layers[crushed.layer].name,
+                    words::number(crushed.pressure * 1e-3, 3)
+                );
+                let place = setup.layers[crushed.layer].place.clone();
+                troubles.push(Trouble::NoResponse { place, detail });
                 return None;
             }
         };
-        let still = found.iter().zip(&pressures).all(|(new, old)| (new - old).abs() <= STILL * old.abs());
-        pressures = found;
+        let still =
+            found.mean.iter().zip(&pressures).all(|(new, old)| (new - old).abs() <= STILL * old.abs());
+        pressures.clone_from(&found.mean);
+        statics = Some(found);
         if still {
             break;
         }
@@ -79,9 +93,97 @@ pub(super) fn build(setup: &Setup, troubles: &mut Vec<Trouble>) -> Option<Built>
             stack.cell.height = stack.layers.iter().map(|layer| layer.thickness).sum();
         }
     }
+    let Statics { assumed, conflicts, .. } = statics?;
+    let mut disagree = sizes(setup, &stack, &layers, &pressures, &ambient);
+    disagree.extend(conflicts.iter().map(|conflict| self::conflict(setup, conflict)));
+    if !disagree.is_empty() {
+        troubles.extend(disagree);
+        return None;
+    }
     let states = layers.into_iter().zip(&setup.layers).zip(pressures);
     let states = states.map(|((read, layer), pressure)| read.state(layer, pressure)).collect();
-    Some(Built { stack, states })
+    let closed_at_ambient = assumed.and_then(|index| setup.layers.get(index)).map(|layer| DefaultInForce {
+        place: format!("{}.pressure", layer.place),
+        value: format!("{} kPa abs", words::number(stack.ambient_pressure * 1e-3, 4)),
+        source: "no pressure is known: this gas is taken as closed at ambient pressure".to_owned(),
+    });
+    Some(Built { stack, states, closed_at_ambient })
+}
+
+/// Sizes that can only be compared once the pressures are known: a filled volume against a thickness, and the layers
+/// against a cell that is closed by a lid, which they must fill.
+fn sizes(
+    setup: &Setup,
+    stack: &Stack,
+    layers: &[Read],
+    pressures: &[f64],
+    ambient: &Ambient,
+) -> Vec<Trouble> {
+    let mut troubles = Vec::new();
+    for ((written, read), &pressure) in setup.layers.iter().zip(layers).zip(pressures) {
+        let (Some(filled), Some(_)) =
+            (&written.filled_volume, written.thickness.as_ref().or(written.volume.as_ref()))
+        else {
+            continue;
+        };
+        let thickness = read.layer.thickness;
+        let by_filled = shrunk(filled.value, pressure, read.temperature, ambient) / stack.cell.plan.area();
+        let of =
+            |given: &Option<resolved::Given<f64>>| given.as_ref().and_then(|g| Some(g.tolerance? / g.value));
+        let tolerance =
+            [&written.filled_volume, &written.thickness, &written.volume].into_iter().filter_map(of);
+        if (by_filled - thickness).abs() > (ROUNDING + tolerance.sum::<f64>()) * thickness {
+            troubles.push(Trouble::SizesDisagree {
+                place: filled.place.clone(),
+                other: written
+                    .thickness
+                    .as_ref()
+                    .or(written.volume.as_ref())
+                    .map_or_else(String::new, |g| g.place.clone()),
+                what: format!(
+                    "`filled-volume` at {} kPa makes {} of \"{}\", but it is said to be {} thick.",
+                    words::number(pressure * 1e-3, 4),
+                    words::millimetres(by_filled),
+                    written.name,
+                    words::millimetres(thickness)
+                ),
+            });
+        }
+    }
+    let sum: f64 = stack.layers.iter().map(|layer| layer.thickness).sum();
+    let gap = stack.cell.height - sum;
+    if stack.cell.sealed_top && gap > ROUNDING * stack.cell.height {
+        troubles.push(Trouble::SizesDisagree {
+            place: "cell.height".to_owned(),
+            other: "cell.top".to_owned(),
+            what: format!(
+                "The cell is closed by a lid at {}, but the layers are {} high together: {} is filled by nothing.",
+                words::millimetres(stack.cell.height),
+                words::millimetres(sum),
+                words::millimetres(gap)
+            ),
+        });
+    }
+    troubles
+}
+
+/// A pressure that is known at a layer and is not what the weight of the others leads to: nothing carries the stack.
+fn conflict(setup: &Setup, conflict: &Conflict) -> Trouble {
+    let kilopascal = |pressure: f64| words::number(pressure * 1e-3, 5);
+    let (place, other, name) = match setup.layers.get(conflict.layer) {
+        Some(layer) if layer.vented.value => (layer.vented.place.clone(), layer.place.clone(), &*layer.name),
+        Some(layer) => (format!("{}.pressure", layer.place), layer.place.clone(), &*layer.name),
+        None => ("cell.bottom".to_owned(), "cell.top".to_owned(), "the open bottom"),
+    };
+    Trouble::SizesDisagree {
+        place,
+        other,
+        what: format!(
+            "The pressure of {name} is {} kPa abs, but pressure and weight of what lies above lead to {} kPa abs.",
+            kilopascal(conflict.stated),
+            kilopascal(conflict.carried)
+        ),
+    }
 }
 
 /// What surrounds the cell.
@@ -193,8 +295,6 @@ fn read(
     Some(Read { layer, figures, temperature })
 }
 
-/// A filled volume was drawn at ambient temperature and pressure; under the weight of the layers above it shrinks
-/// as an ideal gas.
 fn thickness(
     layer: &resolved::Layer,
     pressure: f64,
@@ -209,7 +309,13 @@ fn thickness(
         return Some(volume.value / plan.area());
     }
     let filled = layer.filled_volume.as_ref()?;
-    Some(filled.value * (ambient.pressure / pressure) * (temperature / ambient.temperature) / plan.area())
+    Some(shrunk(filled.value, pressure, temperature, ambient) / plan.area())
+}
+
+/// A filled volume was drawn at ambient temperature and pressure; under the weight of the layers above it shrinks
+/// as an ideal gas.
+fn shrunk(filled: f64, pressure: f64, temperature: f64, ambient: &Ambient) -> f64 {
+    filled * (ambient.pressure / pressure) * (temperature / ambient.temperature)
 }
 
 fn plan(setup: &Setup) -> Option<Plan> {

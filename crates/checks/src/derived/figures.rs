@@ -88,7 +88,7 @@ impl Reader<'_> {
     /// Everything at once, so that every trouble of the layer is noted.
     pub(super) fn read(&mut self) -> Option<LayerFigures> {
         let phase = phase(self.setup, self.layer)?;
-        let density = self.figure("density", |f| f.density.as_ref(), |m, t, p| materials::density(m, t, p));
+        let density = self.figure("density", |f| f.density.as_ref(), materials::density);
         let viscosity = self.viscosity(density.as_ref().map(|density| density.value));
         let mut figures = LayerFigures {
             tension: None,
@@ -125,7 +125,7 @@ impl Reader<'_> {
         let diffusivity = self.figure(
             "thermal-diffusivity",
             |f| f.thermal_diffusivity.as_ref(),
-            |m, t, p| materials::thermal_diffusivity(m, t, p),
+            materials::thermal_diffusivity,
         );
         let Some(exponent) = &self.layer.polytropic_exponent else { return index.zip(diffusivity) };
         self.troubles.truncate(noted);
@@ -142,7 +142,7 @@ impl Reader<'_> {
         pick: fn(&Figures) -> Option<&Figure>,
         built_in: fn(&Material, f64, f64) -> Result<Property, Unavailable>,
     ) -> Option<Sourced> {
-        match self.from_text(key, pick, false) {
+        match self.written(key, pick, false) {
             Text::Given(given) => Some(given),
             Text::Unusable => None,
             Text::Nothing => self.built_in(key, built_in),
@@ -150,7 +150,7 @@ impl Reader<'_> {
     }
 
     fn viscosity(&mut self, density: Option<f64>) -> Option<Sourced> {
-        match self.from_text("viscosity", written_viscosity, true) {
+        match self.written("viscosity", written_viscosity, true) {
             Text::Given(given) if self.is_kinematic() => {
                 density.map(|density| Sourced { value: given.value * density, source: given.source })
             }
@@ -174,7 +174,7 @@ impl Reader<'_> {
         }
     }
 
-    fn from_text(&mut self, key: &'static str, pick: fn(&Figures) -> Option<&Figure>, log: bool) -> Text {
+    fn written(&mut self, key: &'static str, pick: fn(&Figures) -> Option<&Figure>, log: bool) -> Text {
         let place = format!("{}.{key}", self.layer.place);
         if self.setup.is_unreadable(&place) {
             return Text::Unusable;

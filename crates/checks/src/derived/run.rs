@@ -52,6 +52,7 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     let Some(built) = build(setup, &mut outcome.troubles) else { return outcome };
     let stack = Arc::new(built.stack);
     outcome.derived.layers = built.states;
+    outcome.derived.defaults.extend(built.closed_at_ambient);
     outcome.derived.stack = Some(Arc::clone(&stack));
     let forced = Drive {
         frequency: drive.map_or(AT_REST, |drive| drive.frequency),

@@ -26,6 +26,15 @@ pub(crate) enum Trouble {
         /// Name of the lower layer.
         below: String,
     },
+    /// Two statements of a size or a pressure that cannot both hold.
+    SizesDisagree {
+        /// The statement that is judged.
+        place: String,
+        /// The other one.
+        other: String,
+        /// A full sentence with both numbers.
+        what: String,
+    },
     /// The stack stands on nothing: no answer of the vertical response.
     NoResponse {
         /// Where.

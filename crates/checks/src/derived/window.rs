@@ -18,10 +18,7 @@ pub(crate) fn drive_window(slabs: &[Slab], set: f64) -> Option<DriveWindow> {
             continue;
         }
         let limits = slab.stability.as_ref()?.limits.as_ref()?;
-        let amplification = slab.motion.as_ref()?.amplification;
-        if !(amplification > 0.0) {
-            return None;
-        }
+        let amplification = Some(slab.motion.as_ref()?.amplification).filter(|t| *t > 0.0)?;
         let scaled: Vec<Interval> = limits
             .windows
             .iter()

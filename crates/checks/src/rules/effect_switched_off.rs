@@ -6,16 +6,20 @@
 //!
 //! What to do: Take the line out of `[model]` once you have seen what the effect does.
 //!
-//! Criterion: the setup is computed a second time with every effect on; the verdict is incomplete where a limit of the drive, an amplification or the mechanism of a slab changes by more than 1 % (judgement), or where that cannot be compared. Where it changes by less the finding is for information only.
+//! Criterion: the setup is computed a second time with every effect on; the verdict is incomplete where a limit of the drive, an amplification or the mechanism of a slab changes by more than 1 % (judgement), or where that cannot be compared. Where it changes by less, and for an effect that this version does not compute in any case, the finding is for information only.
 
 use super::Context;
 use super::context::found;
 use crate::derived::{Derived, Slab, Stability};
 use crate::words;
+use quantity::vocabulary::Effect;
 use setup::finding::{Finding, Severity};
 
 /// Relative change (judgement, see the page).
 const MATTERS: f64 = 0.01;
+
+/// Effects that this version computes.
+const COMPUTED: [Effect; 3] = [Effect::WallDrag, Effect::GasHeatLoss, Effect::GasLayers];
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let difference = context.complete.map(|complete| difference(context.derived(), &complete.derived));
@@ -26,6 +30,9 @@ pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
         .map(|off| {
             let key = off.place.rsplit('.').next().unwrap_or(&off.place);
             let (matters, words) = match &difference {
+                _ if !COMPUTED.contains(&off.value) => {
+                    (false, "this version does not compute it in any case")
+                }
                 Some(Some((change, words))) => (*change > MATTERS, words.as_str()),
                 _ => (true, "what it changes cannot be compared, because this setup is not judged"),
             };
@@ -90,7 +97,6 @@ mod tests {
     use super::*;
     use crate::derived::Outcome;
     use crate::rules::testing::*;
-    use quantity::vocabulary::Effect;
 
     fn case(with_wave: f64) -> Case {
         let mut case = Case::new(13.0).slab("oil", 1.7, &[(100.0, Some(300.0))]);
@@ -116,6 +122,15 @@ mod tests {
         assert_eq!(case.only("effect-switched-off").severity, Severity::Warning);
         case.complete = None;
         assert_eq!(case.only("effect-switched-off").severity, Severity::Warning);
+    }
+
+    #[test]
+    fn an_effect_that_is_not_computed_changes_nothing() {
+        let mut case = case(290.0);
+        case.setup.effects_off = vec![given(Effect::BodyDamping, "model.body-damping")];
+        let found = case.only("effect-switched-off");
+        assert_eq!(found.severity, Severity::Information);
+        assert!(found.message.what.contains("does not compute it"));
     }
 
     #[test]

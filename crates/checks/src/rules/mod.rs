@@ -23,6 +23,7 @@ mod stack_overfills_cell;
 #[cfg(test)]
 mod testing;
 mod value_missing;
+mod values_disagree;
 mod wave_margin_short;
 mod waves_on_interface;
 
@@ -108,7 +109,8 @@ pub static RULES: &[Rule] = &[
 ];
 
 /// Checks of this crate that report under a name of the setup crate.
-const BORROWED: &[fn(&Context<'_>) -> Vec<Finding>] = &[value_missing::check, not_looked_at::check];
+const BORROWED: &[fn(&Context<'_>) -> Vec<Finding>] =
+    &[value_missing::check, values_disagree::check, not_looked_at::check];
 
 /// Every rule there is: reading rules first.
 pub fn all_rules() -> Vec<RuleInfo> {
@@ -123,7 +125,7 @@ pub fn why(name: &str) -> Option<String> {
 /// Runs every rule. A rule that panics becomes one finding; the others are not disturbed.
 pub(crate) fn run(context: &Context<'_>) -> Vec<Finding> {
     let own = RULES.iter().map(|rule| (rule.info.id, rule.check));
-    let borrowed = BORROWED.iter().map(|&check| ("value-missing", check));
+    let borrowed = BORROWED.iter().map(|&check| ("on sizes and figures", check));
     own.chain(borrowed).flat_map(|(name, check)| guarded(name, check, context)).collect()
 }
 
@@ -183,7 +185,7 @@ mod tests {
             &context,
         );
         assert_eq!(findings.len(), 1);
-        assert_eq!((findings[0].rule, findings[0].severity), ("internal-fault", Severity::Error));
+        assert_eq!((findings[0].rule, findings[0].severity), ("internal-fault", Error));
         assert!(findings[0].message.what.contains("broken"));
     }
 }
