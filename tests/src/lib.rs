@@ -3,4 +3,5 @@
 pub mod draw;
 pub mod galerkin;
 pub mod onset;
+pub mod references;
 pub mod stacks;

@@ -40,11 +40,38 @@ fn designs_that_hold() {
     use Response::{Other, Subharmonic};
     // Acceleration of the slab = that of the table × amplification, g. Hold and wave limit, class of the latter.
     let designs = [
-        ("D1", over(S1000, OPEN, 15.0, 40.0), square(50.0), 50.0, 13.0 * 1.731, 175.8, 287.4, Some(Subharmonic)),
+        (
+            "D1",
+            over(S1000, OPEN, 15.0, 40.0),
+            square(50.0),
+            50.0,
+            13.0 * 1.731,
+            175.8,
+            287.4,
+            Some(Subharmonic),
+        ),
         ("D3", over(GLYCEROL, OPEN, 15.0, 12.0), square(40.0), 45.0, 16.5 * 1.152, 140.6, 264.8, Some(Other)),
-        ("D4", over(S500, OPEN, 15.0, 20.0), square(30.0), 60.0, 15.0 * 1.434, 162.3, 259.3, Some(Subharmonic)),
+        (
+            "D4",
+            over(S500, OPEN, 15.0, 20.0),
+            square(30.0),
+            60.0,
+            15.0 * 1.434,
+            162.3,
+            259.3,
+            Some(Subharmonic),
+        ),
         ("D5 lower", over(S1000, 18.0, 12.0, 20.0), square(40.0), 50.0, 13.2 * 1.498, 157.4, 291.2, None),
-        ("D5 upper", over(S1000, OPEN, 10.0, 18.0), square(40.0), 50.0, 13.2 * 1.719, 157.3, 278.1, Some(Other)),
+        (
+            "D5 upper",
+            over(S1000, OPEN, 10.0, 18.0),
+            square(40.0),
+            50.0,
+            13.2 * 1.719,
+            157.3,
+            278.1,
+            Some(Other),
+        ),
         (
             "D6",
             over(S1000, OPEN, 15.0, 35.0),
@@ -55,7 +82,16 @@ fn designs_that_hold() {
             331.7,
             Some(Subharmonic),
         ),
-        ("F5", over(S1000, OPEN, 8.0, 60.0), square(50.0), 50.0, 1.302 * 175.6 / G, 175.6, 243.9, Some(Other)),
+        (
+            "F5",
+            over(S1000, OPEN, 8.0, 60.0),
+            square(50.0),
+            50.0,
+            1.302 * 175.6 / G,
+            175.6,
+            243.9,
+            Some(Other),
+        ),
     ];
     for (name, layered, plan, hertz, set, hold, wave, class) in designs {
         let found = judge(&layered, hertz, set * G, plan);
@@ -110,7 +146,10 @@ fn wider_cells_leave_less_room() {
             let found = judge(&over(S1000, OPEN, 15.0, 40.0), hertz, 250.0, square(width));
             let found = found.wave_limit.unwrap() / found.hold_limit.unwrap();
             println!("{hertz} {width} {found} {ratio}");
-            assert!((found - ratio).abs() <= 0.01 * ratio, "{hertz} Hz, {width} mm: {found}, expected {ratio}");
+            assert!(
+                (found - ratio).abs() <= 0.01 * ratio,
+                "{hertz} Hz, {width} mm: {found}, expected {ratio}"
+            );
         }
     }
 }

@@ -65,12 +65,31 @@ fn onset_of_waves_in_the_literature_set() {
     // 20 mm²/s silicone oil, 7 mm, 80 Hz. Literature of bouncing drops: 4.15 to 4.3 g, 4.75 mm (from memory).
     let k3 = two(9.81, 7e-3, 949.0, 20e-6, 30e-3, 0.0206);
     tongue("K3", &k3, 80.0, Response::Subharmonic, 4.7372, 40.949);
-    close(onset(&k3, TAU * 80.0, Response::Subharmonic, (1250.0, 1400.0), 60.0).unwrap().1 / 9.81, 4.2, 0.03, "K3");
-    tongue("K4", &two(9.81, 6e-3, 950.0, 20.9e-6, 30e-3, 0.0206), 80.0, Response::Subharmonic, 4.7386, 42.566);
+    close(
+        onset(&k3, TAU * 80.0, Response::Subharmonic, (1250.0, 1400.0), 60.0).unwrap().1 / 9.81,
+        4.2,
+        0.03,
+        "K3",
+    );
+    tongue(
+        "K4",
+        &two(9.81, 6e-3, 950.0, 20.9e-6, 30e-3, 0.0206),
+        80.0,
+        Response::Subharmonic,
+        4.7386,
+        42.566,
+    );
     tongue("K5", &two(9.81, 10e-3, 960.0, 50e-6, 30e-3, 0.0208), 50.0, Response::Subharmonic, 7.1918, 39.905);
     let k6 = two(9.81, 50e-3, 998.2, 1.002e-3 / 998.2, 50e-3, 0.07275);
     tongue("K6", &k6, 60.0, Response::Subharmonic, 8.5974, 1.12563);
-    tongue("K7", &two(9.81, 2.9e-3, 1220.0, 1.02e-4, 30e-3, 0.065), 80.0, Response::Subharmonic, 6.653, 139.07);
+    tongue(
+        "K7",
+        &two(9.81, 2.9e-3, 1220.0, 1.02e-4, 30e-3, 0.065),
+        80.0,
+        Response::Subharmonic,
+        6.653,
+        139.07,
+    );
 }
 
 #[test]
@@ -90,7 +109,14 @@ fn three_layers_and_a_split_layer() {
     let water = FluidLayer { density: 998.0, viscosity: 1.0e-3, thickness: 10e-3 };
     let three = stack(9.81, &[air(20e-3), oil(5e-3), water], &[0.0208, 0.040]);
     tongue("K10", &three, 30.0, Response::Subharmonic, 11.711, 15.3694);
-    tongue("K11", &stack(9.81, &[air(20e-3), oil(15e-3)], &[0.0208]), 30.0, Response::Subharmonic, 11.685, 15.5657);
+    tongue(
+        "K11",
+        &stack(9.81, &[air(20e-3), oil(15e-3)], &[0.0208]),
+        30.0,
+        Response::Subharmonic,
+        11.685,
+        15.5657,
+    );
     let split = stack(9.81, &[air(20e-3), oil(7e-3), oil(8e-3)], &[0.0208, 0.0]);
     tongue("K11, split", &split, 30.0, Response::Subharmonic, 11.685, 15.5657);
 }
@@ -108,7 +134,8 @@ fn levitated_layers_are_held_from_the_averaged_bound() {
         let found = neutral(&layered, TAU * 100.0, PI / width, 1.2 * acceleration, &|| false).unwrap();
         close(found.harmonic[0], acceleration, 4e-6, "hold limit");
     }
-    let found = neutral(&levitated(970.0, 5e-4, 0.0211, 0.02), TAU * 100.0, PI / 0.05, 400.0, &|| false).unwrap();
+    let found =
+        neutral(&levitated(970.0, 5e-4, 0.0211, 0.02), TAU * 100.0, PI / 0.05, 400.0, &|| false).unwrap();
     close(found.harmonic[0] / (TAU * 100.0), (2.0 * 9.81 * 0.05 / PI).sqrt(), 5e-3, "averaged bound");
 }
 
@@ -127,7 +154,8 @@ fn depth_matters_under_a_lid_only() {
             (open, free, (2.0 * 9.81 / k).sqrt()),
             (closed, lidded, (2.0 * 9.81 / (k * (k * depth).tanh())).sqrt()),
         ] {
-            let found = neutral(&layered, omega, k, 1.2 * velocity * omega, &|| false).unwrap().harmonic[0] / omega;
+            let found =
+                neutral(&layered, omega, k, 1.2 * velocity * omega, &|| false).unwrap().harmonic[0] / omega;
             close(found, velocity, 1e-4, "velocity");
             close(found, averaged, 0.012, "averaged");
         }

@@ -67,7 +67,8 @@ pub fn monodromy(motion: &Motion, forcing: &Forcing, steps: usize) -> DMatrix<f6
     let mut to_modes = DMatrix::zeros(modes, n * STAGES);
     let mut kept = Vec::with_capacity(modes);
     for m in 0..modes {
-        let resolvent = (DMatrix::identity(STAGES, STAGES) + motion.decay[m] * &ha).try_inverse().expect("L-stable");
+        let resolvent =
+            (DMatrix::identity(STAGES, STAGES) + motion.decay[m] * &ha).try_inverse().expect("L-stable");
         let ends = resolvent.column_sum();
         let moved = &ha * &ends;
         let forced = &resolvent * &ha;

@@ -83,8 +83,9 @@ mod tests {
             let method = Radau::new(stages);
             assert_eq!(method.nodes.len(), stages);
             for p in 0..2 * stages - 1 {
-                let quadrature: f64 =
-                    (0..stages).map(|j| method.matrix[(stages - 1, j)] * method.nodes[j].powi(p as i32)).sum();
+                let quadrature: f64 = (0..stages)
+                    .map(|j| method.matrix[(stages - 1, j)] * method.nodes[j].powi(p as i32))
+                    .sum();
                 assert!((quadrature - 1.0 / (p + 1) as f64).abs() < 1e-12, "{stages} {p}");
             }
         }
