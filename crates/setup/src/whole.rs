@@ -138,7 +138,11 @@ fn inline(value: &toml_edit::Value, text: &str) -> Value {
             };
             Value::Text(Text {
                 value: string.value().clone(),
-                inner: span.start + quote..span.end - quote,
+                inner: if source.len() >= 2 * quote {
+                    span.start + quote..span.end - quote
+                } else {
+                    span.clone()
+                },
                 span,
             })
         }
