@@ -4,11 +4,14 @@
 use crate::analysis::{Analysis, Verdict, analyse};
 use crate::engine::Engine;
 use crate::words;
+use quantity::Kind;
 use setup::finding::{Edit, Finding, Fix, Severity};
-use setup::resolved::DriveKey;
+use setup::resolved::{DriveKey, LayerFluid};
 
 /// Digits of a proposed value; more are tried when rounding leaves the window.
 const DIGITS: [u8; 2] = [3, 4];
+/// Viscosities that silicone oils are commonly sold in, m²/s, up to where they are still poured with ease.
+const GRADES: [f64; 5] = [1e-4, 2e-4, 3.5e-4, 5e-4, 1e-3];
 /// Where one slab on one cushion sits well: natural frequency over that of the drive.
 const GOOD_RATIO: f64 = 1.5;
 
@@ -30,6 +33,7 @@ pub fn changes(
         "interface-falls" | "waves-on-interface" | "hold-margin-short" | "wave-margin-short" => {
             trial.drive_into_window().into_iter().collect()
         }
+        "no-holding-drive" => trial.more_viscous().into_iter().collect(),
         "cushion-near-resonance" => trial.thinner_cushion().into_iter().collect(),
         "effect-switched-off" => trial.effect_on().into_iter().collect(),
         "amplitude-kind-unsaid" => trial.meanings(),
@@ -47,6 +51,17 @@ pub fn offer(finding: &mut Finding, changes: Vec<Fix>) {
     }
 }
 
+/// Where a drive should be, m/s² peak.
+struct Target {
+    /// It must stay in here.
+    range: (f64, f64),
+    value: f64,
+    /// Rounding goes up from it, not down.
+    raised: bool,
+    /// Whether both of the lab's margins are kept.
+    has_margins: bool,
+}
+
 /// One finding and what is needed to try something against it.
 struct Trial<'a> {
     text: &'a str,
@@ -57,29 +72,69 @@ struct Trial<'a> {
 }
 
 impl Trial<'_> {
-    /// The smallest change of the drive that brings it into the window, with both of the lab's margins where they
-    /// fit, else to the middle.
+    /// The smallest change of the drive that brings it into the window.
     fn drive_into_window(&self) -> Option<Fix> {
-        let derived = self.analysis.derived.as_ref()?;
-        let window = derived.window.filter(|window| window.exists)?;
-        let limits = &self.analysis.understanding.setup.limits;
+        let target = self.target(self.analysis)?;
+        self.with_drive(Vec::new(), &target).map(|(fix, _)| fix)
+    }
+
+    /// A more viscous liquid in the slab that has no window of its own, and the drive set into the window that opens,
+    /// where both of the lab's margins fit into it.
+    fn more_viscous(&self) -> Option<Fix> {
+        let understanding = &self.analysis.understanding;
+        let layer = understanding.setup.layers.iter().find(|layer| layer.place == self.finding.place)?;
+        let mut places = vec![format!("{}.grade", layer.place), format!("{}.viscosity", layer.place)];
+        if let Some(LayerFluid::Own(name)) = &layer.fluid {
+            places.push(format!("fluid.{name}.viscosity"));
+        }
+        let (place, now) = places.into_iter().find_map(|place| {
+            let quantity = understanding.places.quantity(&place)?;
+            (quantity.kind == Kind::KinematicViscosity).then_some((place, quantity.value))
+        })?;
+        GRADES.into_iter().filter(|grade| *grade > 1.05 * now).find_map(|grade| {
+            let edit = understanding.places.rewritten(&place, grade, 3, 0.0)?;
+            let key = place.rsplit('.').next().unwrap_or(&place);
+            let said = format!("Set {key} to {}", edit.new_text);
+            let target =
+                self.target(&self.after(std::slice::from_ref(&edit))?).filter(|target| target.has_margins)?;
+            let (fix, drive) = self.with_drive(vec![edit], &target)?;
+            let (_, reaches) = fix.title.split_once(": ")?;
+            Some(Fix { title: format!("{said} and {drive}: {reaches}"), ..fix })
+        })
+    }
+
+    /// Where the drive should be: with both of the lab's margins where they fit, else in the middle of the window.
+    fn target(&self, analysis: &Analysis) -> Option<Target> {
+        let window = analysis.derived.as_ref()?.window.filter(|window| window.exists)?;
+        let limits = &analysis.understanding.setup.limits;
         let hold = window.hold?;
         let lowest = hold / (1.0 - limits.hold_margin.value);
         let highest = window.wave.map_or(f64::INFINITY, |wave| wave / (1.0 + limits.wave_margin.value));
-        let (range, target) = match window.wave {
-            Some(wave) if lowest > highest => ((hold, wave), 0.5 * (hold + wave)),
-            _ => ((lowest, highest), window.set.clamp(lowest, highest)),
+        let target = match window.wave {
+            Some(wave) if lowest > highest => {
+                Target { range: (hold, wave), value: 0.5 * (hold + wave), raised: true, has_margins: false }
+            }
+            _ => Target {
+                range: (lowest, highest),
+                value: window.set.clamp(lowest, highest),
+                raised: lowest > window.set,
+                has_margins: true,
+            },
         };
-        if !target.is_finite() {
-            return None;
-        }
-        // Rounding may leave the range: a digit more, or a step inwards.
-        let inwards = [1.0, if target <= window.set { 0.995 } else { 1.005 }];
-        DIGITS.iter().flat_map(|&digits| inwards.map(|step| (digits, target * step))).find_map(
-            |(digits, target)| {
-                let edits = self.set_drive(target, digits)?;
+        target.value.is_finite().then_some(target)
+    }
+
+    /// The drive set to a target besides other edits, tried; with `acceleration to "13.2 g0 peak"`.
+    fn with_drive(&self, others: Vec<Edit>, target: &Target) -> Option<(Fix, String)> {
+        // Rounding may leave the range: a step inwards, or a digit more.
+        let inwards = [1.0, if target.raised { 1.005 } else { 0.995 }];
+        DIGITS.iter().flat_map(|&digits| inwards.map(|step| (digits, target.value * step))).find_map(
+            |(digits, value)| {
+                let mut edits = self.set_drive(value, digits)?;
+                edits.extend(others.iter().cloned());
+                edits.sort_by_key(|edit| edit.span.start);
                 let set = setup::understand(&applied(self.text, &edits)).setup.drive?.acceleration.value;
-                if set < range.0 || set > range.1 {
+                if set < target.range.0 || set > target.range.1 {
                     return None;
                 }
                 let after = self.cleared_by(&edits)?;
@@ -89,12 +144,10 @@ impl Trial<'_> {
                     DriveKey::Displacement => "displacement",
                 };
                 let place = format!("drive.{key}");
-                let value = &edits.iter().find(|edit| self.is_at(edit, &place))?.new_text;
-                Some(Fix {
-                    title: format!("Set {key} to {value}: {}", reached(&after)),
-                    keeps_meaning: false,
-                    edits,
-                })
+                let text = &edits.iter().find(|edit| self.is_at(edit, &place))?.new_text;
+                let said = format!("{key} to {text}");
+                let title = format!("Set {said}: {}", reached(&after));
+                Some((Fix { title, keeps_meaning: false, edits }, said))
             },
         )
     }

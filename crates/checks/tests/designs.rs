@@ -256,7 +256,8 @@ fn f5_is_thin_and_short_of_wave_margin() {
 
 #[test]
 fn f6_has_no_window() {
-    let analysis = check(&design(50.0, &[("gas", 40.0), ("S100", 15.0)], 50.0, "13.0 g0 peak"));
+    let text = design(50.0, &[("gas", 40.0), ("S100", 15.0)], 50.0, "13.0 g0 peak");
+    let analysis = check(&text);
     assert_eq!(analysis.verdict, Verdict::Fails);
     let finding = only(&analysis);
     assert_eq!((finding.rule, finding.place.as_str()), ("no-holding-drive", "layer.oil"));
@@ -264,6 +265,15 @@ fn f6_has_no_window() {
     let (_, hold, wave) = slab(&analysis, 0);
     near(hold, 175.2, 0.01);
     near(wave, 69.7, 0.01);
+    // A more viscous liquid opens a window.
+    let fixes = changes(&text, &analysis, &Engine::new(), 0, &|| false);
+    assert_eq!(fixes.len(), 1, "{fixes:#?}");
+    assert!(
+        fixes[0].title.starts_with("Set viscosity to \"") && fixes[0].title.contains("acceleration to"),
+        "{fixes:#?}"
+    );
+    let after = check(&applied(&text, &fixes[0]));
+    assert!(after.verdict == Verdict::Holds && after.findings.is_empty(), "{}: {after:#?}", fixes[0].title);
 }
 
 #[test]
@@ -424,4 +434,64 @@ fn a_stated_pressure_must_carry_the_weight() {
     assert_eq!((finding.rule, finding.place.as_str()), ("values-disagree", "layer.cushion.pressure"));
     assert!(finding.message.what.contains("101.47 kPa"), "{}", finding.message.what);
     assert!(with("101.468 kPa abs").findings.is_empty());
+}
+
+#[test]
+fn a_switched_off_effect_leaves_the_verdict_incomplete_only_where_it_matters() {
+    let with = |key: &str| {
+        check(&d1("13.0 g0 peak").replace("[cell]", &format!("[model]\n{key} = false\n\n[cell]")))
+    };
+    // Without wall drag |T| is 1/(1 − (50/78.4)²) = 1.69 instead of 1.73.
+    let analysis = with("wall-drag");
+    assert_eq!((only(&analysis).rule, analysis.verdict), ("effect-switched-off", Verdict::Incomplete));
+    assert_eq!(only(&analysis).place, "model.wall-drag");
+    let analysis = with("body-damping");
+    assert_eq!((only(&analysis).severity, analysis.verdict), (Severity::Information, Verdict::Holds));
+}
+
+#[test]
+fn the_pinned_line_of_a_levitated_slab_slides() {
+    let text = d1("13.0 g0 peak").replace("[cell]", "[cell]\ncontact-line = \"pinned\"");
+    let analysis = check(&text);
+    let finding = only(&analysis);
+    assert_eq!((finding.rule, finding.place.as_str()), ("pinned-line-slides", "cell.contact-line"));
+    assert!(check(&applied(&text, &finding.fixes[0])).findings.is_empty());
+}
+
+#[test]
+fn a_slab_on_the_floor_needs_no_drive_to_hold() {
+    // Oil under open air at a gentle shake: nothing can fall, so there is no hold limit.
+    let text = design(50.0, &[("S1000", 15.0)], 50.0, "5 g0 peak");
+    let analysis = check(&text);
+    assert_eq!(analysis.verdict, Verdict::Holds, "{:#?}", analysis.findings);
+    let derived = analysis.derived.as_ref().expect("computed");
+    assert_eq!(derived.window.expect("driven").hold, Some(0.0));
+    near(derived.slabs[0].motion.expect("driven").amplification, 1.0, 1e-12);
+    // A pinned line is not looked at there.
+    let pinned = check(&text.replace("[cell]", "[cell]\ncontact-line = \"pinned\""));
+    assert_eq!((only(&pinned).rule, pinned.verdict), ("not-looked-at", Verdict::Incomplete));
+}
+
+#[test]
+fn a_damaged_file_never_faults_and_never_holds_by_accident() {
+    let text = d1("13.0 g0 peak");
+    let engine = Engine::new();
+    let lines: Vec<&str> = text.lines().collect();
+    for missing in 0..lines.len() {
+        let damaged: Vec<&str> =
+            lines.iter().enumerate().filter(|(index, _)| *index != missing).map(|(_, line)| *line).collect();
+        let analysis = analyse(&damaged.join("\n"), &engine, &|| false);
+        assert!(!rules(&analysis).contains(&"internal-fault"), "without line {missing}: {}", lines[missing]);
+        let unjudged = analysis.derived.as_ref().is_none_or(|derived| derived.slabs.is_empty());
+        assert!(
+            !unjudged || analysis.verdict != Verdict::Holds,
+            "without line {missing}: {}",
+            lines[missing]
+        );
+    }
+    for end in (0..text.len()).step_by(13).filter(|end| text.is_char_boundary(*end)) {
+        let analysis = analyse(&text[..end], &engine, &|| false);
+        assert!(!rules(&analysis).contains(&"internal-fault"), "{}", &text[..end]);
+        assert_ne!(analysis.verdict, Verdict::Holds, "{}", &text[..end]);
+    }
 }

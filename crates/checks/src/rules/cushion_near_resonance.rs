@@ -89,6 +89,7 @@ fn finding(context: &Context<'_>) -> Option<Finding> {
         ("amplification", motion.amplification),
     ];
     finding.related.extend(context.related_drive());
+    finding.fixable = context.derived().cushions.len() == 1;
     Some(finding)
 }
 

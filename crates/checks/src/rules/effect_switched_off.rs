@@ -39,6 +39,7 @@ pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
             let what = format!("`{key}` is switched off; {words}.");
             let mut finding =
                 found("effect-switched-off", &off.place, context.span(&off.place), what, String::new());
+            finding.fixable = true;
             if !matters {
                 finding.severity = Severity::Information;
             }

@@ -56,6 +56,7 @@ fn finding(context: &Context<'_>) -> Option<Finding> {
         );
         finding.related.push(setup::finding::Related { span: context.face_span(face), message });
     }
+    finding.fixable = alone.is_some();
     finding.related.extend(context.related_drive());
     finding.related.extend(super::cushion_near_resonance::as_cause(context));
     Some(finding)
