@@ -7,7 +7,7 @@ use physics::stability::{Failure, neutral};
 const SAMPLES: usize = 40;
 
 /// Wavenumber (1/m) and acceleration (m/s²) at the minimum of the lowest neutral curve of a class between two
-/// wavenumbers: the lowest of [`SAMPLES`] samples, then golden section around it. Where nothing is neutral up to `up_to`
+/// wavenumbers: the lowest of forty samples, then golden section around it. Where nothing is neutral up to `up_to`
 /// the curve counts as infinite.
 ///
 /// # Errors

@@ -1,6 +1,8 @@
 //! The stability solver where the answer is known otherwise: exact dispersion relations, viscous fall, Mathieu's
 //! equation, zeros of Bessel functions.
 
+#![allow(clippy::unwrap_used)] // also in the helpers of these tests
+
 use physics::stability::layered::{FluidLayer, Forcing, Layered, Response};
 use physics::stability::{Growth, cell_modes, growth, neutral};
 use physics::stack::Plan;

@@ -139,7 +139,7 @@ fn compare(question: &Question, answer: &mut Answer) -> Result<(), Failure> {
         let crossed = marginal.iter().filter(|(other, _)| (low..=high).contains(other));
         let most: usize = crossed.map(|(_, class)| if *class == Response::Other { 2 } else { 1 }).sum();
         let change = second.growing(high).abs_diff(second.growing(low));
-        if change == 0 || change > most || (most - change) % 2 != 0 {
+        if change == 0 || change > most || !(most - change).is_multiple_of(2) {
             answer
                 .disagreements
                 .push(format!("neutral at {a}: change {change}, expected {most}; {marginal:?}"));

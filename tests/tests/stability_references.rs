@@ -1,5 +1,7 @@
 //! The stability solver against SciPy (Mathieu's equation) and mpmath (secular determinants in 40 digits).
 
+#![allow(clippy::unwrap_used)] // also in the helpers of these tests
+
 use physics::stability::layered::{FluidLayer, Forcing, Layered};
 use physics::stability::{growth, neutral};
 use serde_json::Value;

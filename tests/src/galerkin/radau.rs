@@ -22,8 +22,8 @@ impl Radau {
         let powers = DMatrix::from_fn(stages, stages, |p, j| nodes[j].powi(p as i32));
         let lu = powers.lu();
         let mut matrix = DMatrix::zeros(stages, stages);
-        for i in 0..stages {
-            let moments = DVector::from_fn(stages, |p, _| nodes[i].powi(p as i32 + 1) / (p + 1) as f64);
+        for (i, node) in nodes.iter().enumerate() {
+            let moments = DVector::from_fn(stages, |p, _| node.powi(p as i32 + 1) / (p + 1) as f64);
             matrix.set_row(i, &lu.solve(&moments).expect("distinct nodes").transpose());
         }
         Radau { nodes, matrix }
