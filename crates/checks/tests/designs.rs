@@ -495,3 +495,29 @@ fn a_damaged_file_never_faults_and_never_holds_by_accident() {
         assert_ne!(analysis.verdict, Verdict::Holds, "{}", &text[..end]);
     }
 }
+
+#[test]
+fn a_change_that_is_no_longer_wanted_is_not_offered() {
+    let text = d1("9.0 g0 peak");
+    let analysis = check(&text);
+    assert!(changes(&text, &analysis, &Engine::new(), 0, &|| true).is_empty());
+    assert!(changes(&text, &analysis, &Engine::new(), 7, &|| false).is_empty(), "no such finding");
+}
+
+#[test]
+fn a_change_keeps_the_files_own_way_of_stating_the_drive() {
+    // 1.0 mm peak-to-peak at 50 Hz is 5.03 g0 peak; the cross-check is rewritten with it.
+    let drive = "acceleration = \"5.03 g0 peak\"";
+    let stroke = "displacement = \"1.00 mm peak-to-peak\"";
+    let text = d1("5.03 g0 peak").replace(drive, stroke);
+    let analysis = check(&text);
+    let fixes = changes(&text, &analysis, &Engine::new(), 0, &|| false);
+    assert!(fixes[0].title.starts_with("Set displacement to \""), "{fixes:#?}");
+    let after = applied(&text, &fixes[0]);
+    assert!(after.contains(" mm peak-to-peak\"") && check(&after).findings.is_empty(), "{after}");
+    let both = d1("5.03 g0 peak").replace(drive, &format!("{drive}\n{stroke}"));
+    let analysis = check(&both);
+    let fixes = changes(&both, &analysis, &Engine::new(), 0, &|| false);
+    assert_eq!(fixes[0].edits.len(), 2);
+    assert!(check(&applied(&both, &fixes[0])).findings.is_empty(), "{fixes:#?}");
+}

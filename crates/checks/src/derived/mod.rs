@@ -206,7 +206,7 @@ pub struct Cushion {
     pub layer: String,
     /// Pa absolute
     pub pressure: f64,
-    /// Complex polytropic exponent, real part.
+    /// Complex polytropic exponent at the drive's frequency (at rest: at 50 Hz), real part.
     pub polytropic_re: f64,
     /// … and imaginary part: heat loss.
     pub polytropic_im: f64,

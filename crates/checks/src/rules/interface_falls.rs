@@ -4,7 +4,7 @@
 //!
 //! Why it matters: The liquid comes down as fingers within a few e-folding times and the cushion is lost.
 //!
-//! What to do: Raise the drive above the hold limit, or lower the limit: a narrower cell, or a higher frequency at the same velocity.
+//! What to do: Raise the drive above the hold limit, or lower the limit: a narrower cell, or a lower frequency at the same acceleration.
 //!
 //! Criterion: the fastest growing mode of the cell at the slab's own acceleration, from the linearised Navier–Stokes equations with every Floquet exponent, is one that also grows without drive. As a rule of thumb, for long waves on a slab that is free on both sides, a slab holds when its peak velocity v satisfies v² > (2/k)(g − σk²/ρ) with k the longest mode of the cell (averaged; Wolf, Z. Phys. 227, 291, 1969; the verdict does not use it).
 //!

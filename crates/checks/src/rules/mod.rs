@@ -162,6 +162,24 @@ mod tests {
     }
 
     #[test]
+    fn the_list_and_the_folder_agree() {
+        let folder = concat!(env!("CARGO_MANIFEST_DIR"), "/src/rules");
+        let other = ["mod", "context", "testing", "not_looked_at", "value_missing", "values_disagree"];
+        let mut files: Vec<String> = std::fs::read_dir(folder)
+            .expect("the folder of the rules")
+            .map(|entry| {
+                entry.expect("an entry").path().file_stem().expect("a name").to_string_lossy().into_owned()
+            })
+            .filter(|name| !other.contains(&name.as_str()))
+            .map(|name| name.replace('_', "-"))
+            .collect();
+        let mut names: Vec<String> = RULES.iter().map(|rule| rule.info.id.to_owned()).collect();
+        files.sort();
+        names.sort();
+        assert_eq!(files, names);
+    }
+
+    #[test]
     fn names_are_unique_and_have_pages() {
         let mut names: Vec<_> = all_rules().iter().map(|rule| rule.id).collect();
         let count = names.len();
