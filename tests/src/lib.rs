@@ -3,5 +3,6 @@
 pub mod draw;
 pub mod galerkin;
 pub mod onset;
+pub mod questions;
 pub mod references;
 pub mod stacks;

@@ -9,10 +9,12 @@ mod floquet;
 mod mesh;
 mod motion;
 mod radau;
+mod share;
 
 pub use floquet::{Exponent, exponents, monodromy};
 pub use mesh::Resolution;
 pub use motion::Motion;
+pub use share::interface_share;
 
 use physics::stability::layered::{Forcing, Layered};
 
@@ -52,6 +54,12 @@ impl Second {
             if self.growing(middle) == below { low = middle } else { high = middle }
         }
         Some(0.5 * (low + high))
+    }
+
+    /// Share of the interfaces' energy in each of the given modes at an acceleration: see [`interface_share`].
+    pub fn shares(&self, acceleration: f64, modes: &[Exponent]) -> Vec<f64> {
+        let monodromy = monodromy(&self.motion, &Forcing { omega: self.omega, acceleration }, self.steps);
+        modes.iter().map(|mode| interface_share(&self.motion, &monodromy, mode, self.omega)).collect()
     }
 
     /// Number of unknowns.
