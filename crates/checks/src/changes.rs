@@ -213,7 +213,7 @@ impl Trial<'_> {
     fn cleared_by(&self, edits: &[Edit]) -> Option<Analysis> {
         let after = self.after(edits)?;
         let same = |a: &Finding, b: &Finding| a.rule == b.rule && a.place == b.place;
-        let gone = !after.findings.iter().any(|found| found.rule == self.finding.rule);
+        let gone = !after.findings.iter().any(|found| same(found, self.finding));
         let graver = after
             .findings
             .iter()

@@ -20,30 +20,28 @@ pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     growing(context, Mechanism::Falls, |slab, stability| finding(context, slab, stability))
 }
 
-/// One finding for the fastest growing slab of a mechanism; the others are related to it. None without a window.
+/// One finding for every slab that grows by a mechanism, with the drive and a resonance that may be its cause. None
+/// where no drive holds the stack.
 pub(super) fn growing(
     context: &Context<'_>,
     mechanism: Mechanism,
     finding: impl Fn(&Slab, &Stability) -> Finding,
 ) -> Vec<Finding> {
-    if context.derived().window.is_some_and(|window| !window.exists) {
+    let window = context.derived().window;
+    if window.is_some_and(|window| !window.exists) {
         return Vec::new();
     }
-    let mut slabs: Vec<_> =
-        context.judged().filter(|(_, stability)| stability.mechanism == mechanism).collect();
-    slabs.sort_by(|a, b| b.1.growth_rate.total_cmp(&a.1.growth_rate));
-    let Some(&(slab, stability)) = slabs.first() else { return Vec::new() };
-    let mut found = finding(slab, stability);
-    found.related.extend(context.related_drive());
-    found.related.extend(super::cushion_near_resonance::as_cause(context));
-    for (slab, stability) in &slabs[1..] {
-        let verb = if mechanism == Mechanism::Falls { "falls" } else { "raises waves" };
-        let message =
-            format!("\"{}\" {verb} too, at {} 1/s.", slab.name, words::number(stability.growth_rate, 3));
-        found.related.push(setup::finding::Related { span: context.layer_span(&slab.layers[0]), message });
-    }
-    found.fixable = context.derived().window.is_some_and(|window| window.exists);
-    vec![found]
+    context
+        .judged()
+        .filter(|(_, stability)| stability.mechanism == mechanism)
+        .map(|(slab, stability)| {
+            let mut found = finding(slab, stability);
+            found.related.extend(context.related_drive());
+            found.related.extend(super::cushion_near_resonance::as_cause(context));
+            found.fixable = window.is_some();
+            found
+        })
+        .collect()
 }
 
 /// `disturbances of 100 mm (62.8 1/m) grow at 8.70 1/s, by a factor e every 115 ms`.
@@ -144,13 +142,14 @@ mod tests {
     }
 
     #[test]
-    fn two_slabs_that_fall_are_one_finding() {
+    fn each_slab_that_falls_has_its_own_finding() {
         let mut case = Case::new(9.0).slab("oil", 1.7, &[(175.8, None)]).slab("brew", 1.7, &[(170.0, None)]);
-        case.grow(0, Mechanism::Falls, 8.7);
         case.grow(1, Mechanism::Falls, 9.7);
-        let found = case.only("interface-falls");
-        assert!(found.message.what.contains("9.70"));
-        assert!(found.related.iter().any(|related| related.message.contains("\"oil\" falls too")));
+        assert_eq!(case.only("interface-falls").place, "interface.brew|cushion");
+        case.grow(0, Mechanism::Falls, 8.7);
+        let findings = case.findings();
+        let places: Vec<_> = findings.iter().map(|finding| finding.place.as_str()).collect();
+        assert_eq!(places, ["interface.oil|cushion", "interface.brew|cushion"]);
     }
 
     #[test]
