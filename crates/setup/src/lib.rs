@@ -4,18 +4,21 @@
 //! only; [`resolved::Setup`] holds none, so that two setups that mean the same are equal.
 
 pub mod declare;
+pub mod edit;
 pub mod finding;
+pub mod lines;
 mod places;
+mod reader;
 mod resolve;
 pub mod resolved;
 pub mod rule;
 mod rules;
 pub mod tree;
-mod whole;
 mod written;
 
 pub use declare::{declarations, hover_text, schema};
 pub use places::{Places, Spot};
+pub use reader::read;
 pub use rules::RULES;
 pub use rules::file_not_readable::{Cause, LARGEST_FILE, file_not_readable, text_of};
 
@@ -37,7 +40,7 @@ pub struct Understanding {
 /// Reads a setup file, whatever it holds: text → tree → as written → resolved. Never fails; what is wrong is among
 /// the findings.
 pub fn understand(text: &str) -> Understanding {
-    let reading = whole::read(text);
+    let reading = read(text);
     let mut document = written::walk(text, &reading);
     let (setup, found) = resolve::resolve(text, &document);
     let mut findings = std::mem::take(&mut document.findings);
