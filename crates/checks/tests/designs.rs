@@ -521,3 +521,19 @@ fn a_change_keeps_the_files_own_way_of_stating_the_drive() {
     assert_eq!(fixes[0].edits.len(), 2);
     assert!(check(&applied(&both, &fixes[0])).findings.is_empty(), "{fixes:#?}");
 }
+
+#[test]
+fn a_long_chained_oil_is_flagged_above_its_threshold() {
+    let with = |grade: &str| {
+        let layer = format!(
+            "fluid = \"silicone oil\"\ngrade = \"{grade}\"\ndensity = \"973 kg/m³\"\nviscosity = \"1000 mm²/s\"\nsurface-tension = \"21.3 mN/m\""
+        );
+        check(&d1("13.0 g0 peak").replace("fluid = \"S1000\"", &layer))
+    };
+    assert!(!rules(&with("10000 mm²/s")).contains(&"liquid-shear-dependent"));
+    let analysis = with("12500 mm²/s");
+    let finding =
+        analysis.findings.iter().find(|finding| finding.rule == "liquid-shear-dependent").expect("flagged");
+    assert_eq!((finding.place.as_str(), finding.severity), ("layer.oil", Severity::Warning));
+    assert!(finding.message.what.contains("12500 mm²/s"), "{}", finding.message.what);
+}

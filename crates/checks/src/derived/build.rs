@@ -223,6 +223,7 @@ struct Read {
     layer: Layer,
     figures: LayerFigures,
     temperature: f64,
+    shear_dependent: Option<String>,
 }
 
 impl Read {
@@ -249,7 +250,7 @@ impl Read {
             density: self.layer.density,
             viscosity: self.layer.viscosity,
             surface_tension: self.figures.tension.map(|tension| tension.value),
-            shear_dependent: None,
+            shear_dependent: self.shear_dependent,
             sources,
         }
     }
@@ -269,7 +270,9 @@ fn read(
     }
     let temperature =
         layer.temperature.as_ref().map(|given| given.value).or(ambient.map(|a| a.temperature))?;
-    let figures = Reader { setup, layer, temperature, pressure, troubles }.read()?;
+    let mut reader = Reader { setup, layer, temperature, pressure, troubles };
+    let shear_dependent = reader.shear_dependent();
+    let figures = reader.read()?;
     let (ambient, plan) = (ambient?, plan?);
     let thickness = thickness(layer, pressure, temperature, ambient, plan);
     if ["thickness", "volume", "filled-volume", "vented", "pressure", "polytropic-exponent"]
@@ -292,7 +295,7 @@ fn read(
         viscosity: figures.viscosity.value,
         gas,
     };
-    Some(Read { layer, figures, temperature })
+    Some(Read { layer, figures, temperature, shear_dependent })
 }
 
 fn thickness(

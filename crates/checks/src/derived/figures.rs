@@ -12,6 +12,10 @@ const VISCOSITY_REACH: f64 = 2.0;
 /// Any other single figure, K: at most about 1 % (judgement).
 const FIGURE_REACH: f64 = 10.0;
 
+/// Silicone oils above this grade are no longer Newtonian at the rates of a shaken layer, m²/s (from memory of makers'
+/// data sheets; judgement).
+const NEWTONIAN_UP_TO: f64 = 1e-2;
+
 /// A diffusivity that nothing reads, m²/s (that of air).
 const NOT_USED: f64 = 2.1e-5;
 
@@ -278,6 +282,17 @@ impl Reader<'_> {
             other => Trouble::OutsideRange { place, figure: key, detail: other.to_string() },
         };
         self.troubles.push(trouble);
+    }
+
+    /// Why the viscosity of the layer depends on how fast it is sheared, where it does.
+    pub(super) fn shear_dependent(&self) -> Option<String> {
+        let material = self.material().filter(|material| material.fluid == BuiltInFluid::SiliconeOil)?;
+        let grade = material.grade.filter(|grade| *grade > NEWTONIAN_UP_TO)?;
+        Some(format!(
+            "a silicone oil of {} mm²/s: above {} mm²/s its long chains thin under shear",
+            crate::words::number(grade * 1e6, 3),
+            NEWTONIAN_UP_TO * 1e6
+        ))
     }
 
     /// The built-in fluid of the layer. A silicone oil without a grade takes its own kinematic viscosity for one:
