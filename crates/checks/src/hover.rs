@@ -1,7 +1,9 @@
 //! What an editor shows at a place: the declaration of a key, and what was computed for its layer or for the drive.
 
 use crate::analysis::Analysis;
-use crate::derived::{Cushion, Derived, DriveState, LayerState, Limits, Seat, SetBy, Slab};
+use crate::derived::{
+    Cushion, Derived, DriveState, DriveWindow, LayerState, Limits, Mode, Seat, SetBy, Slab,
+};
 use crate::rules::response_words;
 use crate::words;
 use quantity::vocabulary::Phase;
@@ -108,6 +110,7 @@ fn layer(derived: &Derived, index: usize) -> String {
     if let Some(slab) = derived.slabs.iter().find(|slab| slab.range.contains(&index)) {
         lines.extend(self::slab(derived, slab));
     }
+    lines.push(format!("Sources: {}.", state.sources.join("; ")));
     lines.join("\n\n")
 }
 
@@ -195,53 +198,61 @@ fn slab(derived: &Derived, slab: &Slab) -> Vec<String> {
     if let (Some(limits), Some(motion)) = (&stability.limits, &slab.motion) {
         lines.extend(self::limits(slab, limits, motion.amplification));
     }
-    if let Some(window) = derived.window.filter(|window| window.exists && window.set > 0.0) {
-        let room: Vec<String> = [
-            window.hold.map(|hold| {
-                format!("down by {} before something falls", words::percent(1.0 - hold / window.set))
-            }),
-            window
-                .wave
-                .map(|wave| format!("up by {} before waves rise", words::percent(wave / window.set - 1.0))),
-        ]
-        .into_iter()
-        .flatten()
-        .collect();
-        if !room.is_empty() {
-            lines.push(format!("The drive can go {}.", words::list(&room)));
-        }
-    }
+    lines.extend(derived.window.as_ref().and_then(room));
     lines
 }
 
+/// What the window leaves for the table.
+fn room(window: &DriveWindow) -> Option<String> {
+    if !window.exists {
+        return None;
+    }
+    let way = |margin: f64, room: &str, lack: &str, before: &str, until: &str| match margin >= 0.0 {
+        true => format!("can go {room} by {} before {before}", words::percent(margin)),
+        false => format!("must go {lack} by {} until {until}", words::percent(-margin)),
+    };
+    let ways: Vec<String> = [
+        window.hold_margin().map(|margin| way(margin, "down", "up", "something falls", "everything holds")),
+        window.wave_margin().map(|margin| way(margin, "up", "down", "waves rise", "waves die")),
+    ]
+    .into_iter()
+    .flatten()
+    .collect();
+    (!ways.is_empty()).then(|| format!("The drive {}.", words::list(&ways)))
+}
+
 fn limits(slab: &Slab, limits: &Limits, amplification: f64) -> Vec<String> {
-    let one = |verb: &str, limit: Option<f64>, by: Option<SetBy>| {
+    let one = |verb: &str, limit: Option<f64>, by: Option<String>| {
         let limit = limit?;
-        let by = by.map_or_else(String::new, |by| {
-            format!("; set by {}, {}", slab.faces[by.face].words(), mode(&by))
-        });
+        let by = by.map_or_else(String::new, |by| format!("; set by {by}"));
         Some(format!(
             "{verb} {} of its own, {} at the cell{by}.",
             words::acceleration(limit),
             words::short_acceleration(limit / amplification)
         ))
     };
+    let at = |by: &SetBy, mode: String| format!("{}, {mode}", slab.faces[by.face].words());
     let hold = match limits.hold {
         Some(0.0) => Some("Needs no drive to hold.".to_owned()),
-        hold => one("Holds from", hold, limits.hold_set_by),
+        hold => one("Holds from", hold, limits.hold_set_by.map(|by| at(&by, shape(&by)))),
     };
-    let wave = one("Waves from", limits.wave, limits.wave_set_by).or_else(|| {
-        Some(format!("No waves found up to {} of its own.", words::acceleration(limits.searched_up_to)))
-    });
+    let wave =
+        one("Waves from", limits.wave, limits.wave_set_by.map(|by| at(&by, mode(&by)))).or_else(|| {
+            Some(format!("No waves found up to {} of its own.", words::acceleration(limits.searched_up_to)))
+        });
     hold.into_iter().chain(wave).collect()
 }
 
 fn mode(by: &SetBy) -> String {
+    format!("{}, {}", shape(by), response_words(by.response))
+}
+
+fn shape(by: &SetBy) -> String {
     let shape = match by.mode {
-        crate::derived::Mode::Cell([m, n]) => format!("mode ({m},{n})"),
-        crate::derived::Mode::Continuum => "one of many dense modes".to_owned(),
+        Mode::Cell([m, n]) => format!("mode ({m},{n})"),
+        Mode::Continuum => "one of many dense modes".to_owned(),
     };
-    format!("{shape}, wavelength {}, {}", words::wave(by.wavenumber), response_words(by.response))
+    format!("{shape}, wavelength {}", words::wave(by.wavenumber))
 }
 
 fn sentence(text: &str) -> String {
