@@ -5,6 +5,7 @@
 //! a stack listed **top first** as the setup file has them.
 
 mod complex;
+pub mod materials;
 pub mod response;
 pub mod stability;
 pub mod stack;
