@@ -2,7 +2,7 @@
 //! else the built-in correlation. Tables are interpolated (a viscosity: log against 1/T) and never extrapolated.
 
 use super::trouble::Trouble;
-use physics::materials::{self, Material, Property, Unavailable};
+use physics::materials::{self, Material, NEWTONIAN_UP_TO, Property, Unavailable};
 use quantity::vocabulary::{BuiltInFluid, Phase};
 use setup::resolved::{Figure, Figures, Layer, LayerFluid, Setup, WrittenViscosity};
 
@@ -11,10 +11,6 @@ use setup::resolved::{Figure, Figures, Layer, LayerFluid, Setup, WrittenViscosit
 const VISCOSITY_REACH: f64 = 2.0;
 /// Any other single figure, K: at most about 1 % (judgement).
 const FIGURE_REACH: f64 = 10.0;
-
-/// Silicone oils above this grade are no longer Newtonian at the rates of a shaken layer, m²/s (from memory of makers'
-/// data sheets; judgement).
-const NEWTONIAN_UP_TO: f64 = 1e-2;
 
 /// A diffusivity that nothing reads, m²/s (that of air).
 const NOT_USED: f64 = 2.1e-5;
