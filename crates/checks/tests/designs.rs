@@ -221,6 +221,8 @@ fn f3_is_on_resonance() {
     let cause = analysis.findings.iter().position(|finding| finding.rule == "cushion-near-resonance");
     let cause = cause.unwrap_or_else(|| panic!("{:#?}", analysis.findings));
     assert_eq!(analysis.findings[cause].place, "layer.cushion");
+    // 7.9 × 1.29 mm over 95 mm is 10.7 %.
+    assert!(rules(&analysis).contains(&"cushion-stroke-long"));
     let waves = analysis.findings.iter().find(|finding| finding.rule == "waves-on-interface").expect("waves");
     assert!(
         waves.related.iter().any(|related| related.message.contains("The cushion resonates at")),

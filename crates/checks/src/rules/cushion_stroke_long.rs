@@ -6,7 +6,7 @@
 //!
 //! What to do: Use a thicker cushion, a smaller drive, or stay further from resonance.
 //!
-//! Criterion: amplitude of the relative motion of its two faces over its thickness above 10 % (judgement): the gas spring p ∝ V⁻ⁿ then makes a second harmonic of the force of (n+1)/4 · 10 % = 6 % of the first, before any resonance of the slab at twice the drive.
+//! Criterion: amplitude of the relative motion of its two faces over its thickness above 5 % (judgement): the gas spring p ∝ V⁻ⁿ then makes a second harmonic of the force of (n+1)/4 · 5 % = 3 % of the first, before any resonance of the slab at twice the drive; and near f = 2 f0 the spring bounces at half the drive's frequency from a stroke of 4ζ/(n+1) on, which is 5 % at ζ = 0.03, the damping of a lightly dragged slab. Neither is computed by this version.
 //!
 //! Silent where the faces would meet: that is cushion-crushed.
 
@@ -17,7 +17,7 @@ use crate::words;
 use setup::finding::Finding;
 
 /// Stroke over thickness (judgement, see the page).
-const LONG: f64 = 0.1;
+const LONG: f64 = 0.05;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let cushions = context.derived().cushions.iter();
@@ -44,11 +44,11 @@ mod tests {
     use crate::rules::testing::*;
 
     #[test]
-    fn fires_above_a_tenth_and_not_below() {
-        let found = Case::new(13.0).cushion("cushion", 0.101).only("cushion-stroke-long");
+    fn fires_above_a_twentieth_and_not_below() {
+        let found = Case::new(13.0).cushion("cushion", 0.0505).only("cushion-stroke-long");
         assert_eq!(found.place, "layer.cushion");
-        assert!(found.message.what.contains("10.1 %"));
-        Case::new(13.0).cushion("cushion", 0.1).silent("cushion-stroke-long");
+        assert!(found.message.what.contains("5.1 %"));
+        Case::new(13.0).cushion("cushion", 0.05).silent("cushion-stroke-long");
         // D1 of the worked designs: (1.731 − 1)·1.29 mm over 40 mm.
         Case::new(13.0).cushion("cushion", 0.0236).silent("cushion-stroke-long");
     }
