@@ -92,6 +92,13 @@ fn no_good_key_is_lost_and_no_span_is_wrong() {
             assert!(!reading.slips.is_empty(), "{broken:?} is no TOML and must be said");
             let mut kept = 0;
             for (path, key, value) in keys {
+                // Below a header whose name is clear in spite of the slip, the key belongs to that table.
+                let below = path == "top" && key == "k3" && broken.contains("[bad");
+                let path = match (below, broken.starts_with("[[")) {
+                    (true, true) => "bad.0",
+                    (true, false) => "bad",
+                    _ => path,
+                };
                 let Some(entry) = table(&reading.root, path).and_then(|table| table.get(key)) else {
                     continue;
                 };
@@ -100,7 +107,6 @@ fn no_good_key_is_lost_and_no_span_is_wrong() {
                 assert!(text[entry.statement.clone()].starts_with(key), "{broken:?}");
                 kept += 1;
             }
-            // A key is never moved to a table that it does not stand in, except below a header whose name is clear.
             assert!(kept >= 6, "{broken:?}: {kept} of 7 keys");
             complete += usize::from(kept == 7);
             for slip in &reading.slips {
@@ -152,7 +158,7 @@ fn mends_say_what_a_person_would() {
         ("between = [\"a\", \"b\"", "between = [\"a\", \"b\"]"),
         ("[drive", "[drive]"),
         ("[[layer]", "[[layer]]"),
-        ("[drive] fast", "[drive]"),
+        ("[drive] fast", "[drive] # fast"),
     ] {
         let text = format!("{broken}\n");
         let reading = read(&text);

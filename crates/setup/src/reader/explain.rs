@@ -32,36 +32,27 @@ pub(super) fn broken(
     repeated: &HashSet<Vec<String>>,
 ) -> Explained {
     let body = &text[statement.body.clone()];
-    let short = body.len() <= LONGEST_MEND;
-    if statement.too_deep {
-        return Explained {
-            span: statement.body.clone(),
-            message: format!("`{}` nests deeper than any setup does", shown(body)),
-            key: None,
-            header: body.starts_with('[').then_some(None),
-            mend: None,
-        };
+    let short = mends && body.len() <= LONGEST_MEND && !statement.too_deep;
+    let before = &text[statement.whole.start..statement.body.start];
+    let after = &text[statement.body.end..statement.whole.end];
+    let Mended { at, mut fault, key, header, body: mut mended, mut title } =
+        if short { mend::look(body, statement.body.start, repeated) } else { mend::glance(body) };
+    if fault.is_none() && after.contains(is_control) {
+        fault = Some("a control character that no editor shows stands in the comment".to_owned());
+        title = "Take the control character away".to_owned();
+        mended = Some(body.to_owned());
     }
-    let explained = mend::header(body, statement.body.start, repeated)
-        .or_else(|| mend::pair(body))
-        .unwrap_or_else(|| mend::other(body));
-    let Mended { at, message, key, header, body: mended, title } = explained;
     let at = at.filter(|at| body.get(at.clone()).is_some_and(|part| !part.is_empty()));
     let at = at.unwrap_or(0..body.len());
-    let message = message.unwrap_or_else(|| format!("`{}` cannot be read: {word}", shown(body)));
-    let mend = mended.filter(|_| mends && short).and_then(|mended| {
-        let reads = mended.is_empty()
-            || is_statement(&mended)
-            || mended.split('\n').all(|line| is_statement(line.trim()));
-        let before = &text[statement.whole.start..statement.body.start];
-        let after = &text[statement.body.end..statement.whole.end];
+    let message = format!("`{}`: {}", shown(body), fault.as_deref().unwrap_or(word));
+    let mend = mended.filter(|mended| reads(mended)).map(|mended| {
         // A line that is taken away goes with its line end, unless a comment follows.
-        let whole = if mended.is_empty() && after.trim().is_empty() {
-            String::new()
+        if mended.is_empty() && after.trim().is_empty() {
+            (title, String::new())
         } else {
-            format!("{before}{}{after}", mended.replace('\n', mend::newline(text)))
-        };
-        reads.then_some((title, whole))
+            let mended = mended.replace('\n', newline(text));
+            (title, format!("{before}{mended}{}", after.replace(is_control, "")))
+        }
     });
     Explained {
         span: statement.body.start + at.start..statement.body.start + at.end,
@@ -70,6 +61,34 @@ pub(super) fn broken(
         header,
         mend,
     }
+}
+
+/// One slip for all that are not told one by one.
+pub(super) fn further(first: &Slip, last: &Slip, count: usize) -> Slip {
+    Slip {
+        kind: SlipKind::Unreadable,
+        span: first.span.clone(),
+        statement: first.statement.start..last.statement.end.max(first.statement.end),
+        message: format!("{count} more statements from here on cannot be read"),
+        related: None,
+        mend: None,
+        lost_key: None,
+    }
+}
+
+/// Whether a rewriting is read without a slip: a statement, several, a comment, or nothing.
+fn reads(mended: &str) -> bool {
+    let line = |line: &str| line.is_empty() || line.starts_with('#') || is_statement(line);
+    is_statement(mended) || mended.split('\n').map(str::trim).all(line)
+}
+
+fn is_control(c: char) -> bool {
+    c.is_ascii_control() && !matches!(c, '\t' | '\r' | '\n')
+}
+
+/// The line end that a file uses.
+fn newline(text: &str) -> &'static str {
+    if text.contains("\r\n") { "\r\n" } else { "\n" }
 }
 
 /// A key that its table holds already, or that a value stands in the way of.
@@ -162,7 +181,8 @@ pub(super) fn header_clash(
 
 /// The keys below a header that could not be read.
 pub(super) fn homeless(first: &Statement, last: &Statement, count: usize) -> Slip {
-    let keys = if count == 1 { "the key".to_owned() } else { format!("the {count} keys") };
+    let keys =
+        if count == 1 { "the key here stands".to_owned() } else { format!("the {count} keys here stand") };
     Slip {
         kind: SlipKind::TableUnknown,
         span: first.body.start..last.body.end,

@@ -24,8 +24,8 @@ use parse::{Parsed, Segment, parse};
 use statements::{Statement, Statements};
 use std::collections::HashSet;
 
-/// Mends are worked out for so many broken statements; a file with more is no setup file.
-const MOST_MENDS: usize = 200;
+/// So many slips are told one by one; a file with more is no setup file.
+const MOST_SLIPS: usize = 200;
 
 /// Reads a text, whatever it holds.
 pub fn read(text: &str) -> Reading {
@@ -70,6 +70,8 @@ struct Reader<'a> {
     merge: Merge,
     current: Current,
     slips: Vec<Slip>,
+    /// The first and the last slip that are not told, and how many.
+    further: Option<(Slip, Slip, usize)>,
     /// Where the key of a slip would stand after its mend.
     mended_keys: Vec<(usize, NodeId, Vec<String>)>,
     /// Paths of all `[[headers]]`.
@@ -85,6 +87,7 @@ impl<'a> Reader<'a> {
             merge: Merge::new(),
             current: Current { table: Some(ROOT), path: Vec::new() },
             slips: Vec::new(),
+            further: None,
             mended_keys: Vec::new(),
             repeated: HashSet::new(),
             homeless: None,
@@ -93,7 +96,7 @@ impl<'a> Reader<'a> {
 
     fn parse(&self, statement: &Statement) -> Result<Parsed, String> {
         if statement.too_deep {
-            return Err("too deep".to_owned());
+            return Err("it nests deeper than any setup does".to_owned());
         }
         let control = |c: char| c.is_ascii_control() && !matches!(c, '\t' | '\r' | '\n');
         if self.text[statement.body.end..statement.whole.end].contains(control) {
@@ -110,7 +113,8 @@ impl<'a> Reader<'a> {
             Err(clash) => {
                 self.current.table = clash.table;
                 let lost = self.current.path.clone();
-                self.slips.push(explain::header_clash(self.text, statement, path, repeated, &clash, lost));
+                let slip = explain::header_clash(self.text, statement, path, repeated, &clash, lost);
+                self.tell(slip);
             }
         }
     }
@@ -130,7 +134,19 @@ impl<'a> Reader<'a> {
 
     fn clash(&mut self, statement: &Statement, path: &[Segment], here: &Span, clash: &Clash) {
         let lost = self.lost(&names(path));
-        self.slips.push(explain::pair_clash(self.text, statement, path, here, clash, lost));
+        let slip = explain::pair_clash(self.text, statement, path, here, clash, lost);
+        self.tell(slip);
+    }
+
+    fn tell(&mut self, slip: Slip) {
+        if self.slips.len() < MOST_SLIPS {
+            self.slips.push(slip);
+        } else {
+            self.further = Some(match self.further.take() {
+                None => (slip.clone(), slip, 1),
+                Some((first, _, count)) => (first, slip, count + 1),
+            });
+        }
     }
 
     fn lost(&self, key: &[String]) -> Option<Vec<String>> {
@@ -138,7 +154,7 @@ impl<'a> Reader<'a> {
     }
 
     fn broken(&mut self, statement: &Statement, word: &str) {
-        let mends = self.mended_keys.len() < MOST_MENDS;
+        let mends = self.slips.len() < MOST_SLIPS;
         let explained = explain::broken(self.text, statement, word, mends, &self.repeated);
         let Explained { span, message, key, header, mend } = explained;
         let mut lost_key = None;
@@ -157,7 +173,7 @@ impl<'a> Reader<'a> {
                 self.mended_keys.push((self.slips.len(), table, key));
             }
         }
-        self.slips.push(Slip {
+        self.tell(Slip {
             kind: SlipKind::Unreadable,
             span,
             statement: statement.whole.clone(),
@@ -171,14 +187,14 @@ impl<'a> Reader<'a> {
     /// One slip for all keys whose table is not known.
     fn settle_homeless(&mut self) {
         if let Some((first, last, count)) = self.homeless.take() {
-            self.slips.push(explain::homeless(&first, &last, count));
+            self.tell(explain::homeless(&first, &last, count));
         }
     }
 
     fn lone_returns(&mut self, span: Span) {
         let text = &self.text[span.clone()];
         let mended = text.replace("\r\n", "\n").replace('\r', "\n");
-        self.slips.push(Slip {
+        self.tell(Slip {
             kind: SlipKind::Unreadable,
             span: span.start..span.start + 1,
             message: "a line ends with a carriage return alone, which other readers of the file refuse"
@@ -197,6 +213,9 @@ impl<'a> Reader<'a> {
             if self.merge.has(*table, key) {
                 self.slips[*slip].mend = None;
             }
+        }
+        if let Some((first, last, count)) = &self.further {
+            self.slips.push(explain::further(first, last, *count));
         }
         self.slips.sort_by_key(|slip| slip.span.start);
         Reading { root: self.merge.finish(), slips: self.slips }

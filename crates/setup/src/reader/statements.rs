@@ -103,10 +103,12 @@ impl Iterator for Statements<'_> {
             self.at = offset + window.len();
             return if self.at < self.text.len() { self.next() } else { None };
         };
-        let end = line_end(self.text, scan.end);
+        // Quotes that nobody closes take the line ends along.
+        let body = start..start + self.text[start..scan.end].trim_end_matches([' ', '\t', '\r', '\n']).len();
+        let end = line_end(self.text, body.end);
         self.budget = self.budget.saturating_sub(end - offset);
         self.at = end;
-        Some(Statement { whole: line_start..end, body: start..scan.end, too_deep: scan.too_deep })
+        Some(Statement { whole: line_start..end, body, too_deep: scan.too_deep })
     }
 }
 
@@ -119,6 +121,8 @@ struct Scan {
     past_equals: bool,
     /// Open brackets; `true`: a brace.
     open: Vec<bool>,
+    /// How many of them are braces.
+    braces: usize,
     dots: usize,
     too_deep: bool,
     /// The last token calls for more: an opening bracket or a comma.
@@ -148,9 +152,10 @@ impl Scan {
             Equals => self.past_equals = true,
             LeftSquareBracket | LeftCurlyBracket if self.past_equals => {
                 self.open.push(kind == LeftCurlyBracket);
+                self.braces += usize::from(kind == LeftCurlyBracket);
             }
             RightSquareBracket | RightCurlyBracket => {
-                self.open.pop();
+                self.braces -= usize::from(self.open.pop() == Some(true));
             }
             _ => {}
         }
@@ -166,9 +171,9 @@ impl Scan {
     /// The next line can only be a statement of its own, so the open bracket will not be closed. In an array no line
     /// starts with `key =`, indented or not; in an inline table one may where a comma calls for it.
     fn gives_up_before(&self, next: &str) -> bool {
-        let in_table = self.open.contains(&true);
         starts_statement(next)
-            || ((!in_table || !self.wants_more) && starts_statement(next.trim_start_matches([' ', '\t'])))
+            || ((self.braces == 0 || !self.wants_more)
+                && starts_statement(next.trim_start_matches([' ', '\t'])))
     }
 }
 
