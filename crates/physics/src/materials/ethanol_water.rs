@@ -32,6 +32,7 @@ const DENSITIES: [[f64; 11]; 4] = [
 ];
 
 /// mPa s at the same.
+#[allow(clippy::approx_constant)] // a viscosity of 3.14 mPa s is no π
 const VISCOSITIES: [[f64; 11]; 4] = [
     [1.140, 1.792, 2.618, 3.26, 3.53, 3.44, 3.14, 2.770, 2.309, 1.802, 1.332],
     [1.005, 1.538, 2.183, 2.71, 2.91, 2.87, 2.67, 2.370, 2.008, 1.610, 1.200],

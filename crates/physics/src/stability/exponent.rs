@@ -26,6 +26,11 @@ const INTERFACE_SHARE: f64 = 0.02;
 pub(super) const TRUNCATION: f64 = 1e-11;
 /// Im s closer than this (times ω) to 0 or ω/2 is real: harmonic or subharmonic.
 const REAL: f64 = 1e-7;
+/// Within this (times ω) of those lines an exponent is looked for on the line itself.
+const NEARLY_REAL: f64 = 1e-3;
+/// Points a decade of the search for overdamped modes, and the decades below its far end.
+const POINTS_A_DECADE: i32 = 8;
+const DECADES: i32 = 7;
 
 /// The leading exponent at one wavenumber.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -190,8 +195,10 @@ where
         }
         Complex64::new(0.5 * (below + above), 0.0)
     } else {
-        match hints.iter().copied().max_by(|x, y| x.re.total_cmp(&y.re)) {
-            Some(hint) => muller(hint, det, 30, 1e-12).unwrap_or(hint),
+        let known = hints.iter().copied().max_by(|x, y| x.re.total_cmp(&y.re));
+        let known = known.map(|hint| muller(hint, det, 30, 1e-12).unwrap_or(hint));
+        match slowest_at_rest(stiffness, known) {
+            Some(exponent) => exponent,
             None => {
                 return Err(Failure::ExponentLost {
                     wavenumber: k,
@@ -212,6 +219,49 @@ where
         residual: det(exponent).norm() / away.max(f64::MIN_POSITIVE),
         harmonics: 0,
     })
+}
+
+/// The slowest decay at rest: `known`, or a real root of det M closer to the origin, where overdamped modes sit.
+fn slowest_at_rest<D: Size>(stiffness: &Stiffness<D>, known: Option<Complex64>) -> Option<Complex64>
+where
+    DefaultAllocator: Allocator<D, D> + Allocator<D>,
+{
+    let limit = known?.re;
+    let value = |x: f64| stiffness.at(Complex64::new(x, 0.0)).determinant().re;
+    let turns = |root: f64| {
+        let slope = (value(root * 1.0001) - value(root * 0.9999)) / (2e-4 * root);
+        (value(0.5 * root) / slope).abs() > INTERFACE_SHARE * root.abs()
+    };
+    slowest_zero(value, limit, turns).map(|root| Complex64::new(root, 0.0)).or(known)
+}
+
+/// The zero closest to the origin between it and `limit` < 0 of a real function, among those that `accept` takes: a
+/// change of sign that is no pole, on a mesh that is geometric towards the origin.
+fn slowest_zero(value: impl Fn(f64) -> f64, limit: f64, accept: impl Fn(f64) -> bool) -> Option<f64> {
+    let at = |j: i32| limit * 10f64.powf(f64::from(j) / f64::from(POINTS_A_DECADE) - f64::from(DECADES));
+    // `limit` is a zero itself: the last point stops short of it.
+    let mesh = (0..POINTS_A_DECADE * DECADES).map(at).chain([limit * (1.0 - 1e-6)]);
+    let (mut near, mut near_value) = (0.0, value(0.0));
+    for far in mesh {
+        let far_value = value(far);
+        if near_value * far_value < 0.0 {
+            let (mut a, mut b) = (near, far);
+            for _ in 0..100 {
+                let middle = 0.5 * (a + b);
+                if middle == a || middle == b {
+                    break;
+                }
+                if value(middle) * near_value > 0.0 { a = middle } else { b = middle }
+            }
+            let root = 0.5 * (a + b);
+            let is_zero = value(root).abs() < 1e-3 * near_value.abs().min(far_value.abs());
+            if is_zero && accept(root) {
+                return Some(root);
+            }
+        }
+        (near, near_value) = (far, far_value);
+    }
+    None
 }
 
 /// The hunt for exponents at one acceleration.
@@ -264,12 +314,7 @@ where
         let rough = muller(start, |s| self.reduced(s, self.is_upper(start)), 40, 1e-6)?;
         let rough = Complex64::new(rough.re, fold(rough.im, omega));
         let root = muller(rough, |s| self.full(s, self.is_upper(rough)), 30, 1e-13)?;
-        let mut root = Complex64::new(root.re, fold(root.im, omega));
-        if root.im < REAL * omega {
-            root.im = 0.0;
-        } else if root.im > (0.5 - REAL) * omega {
-            root.im = 0.5 * omega;
-        }
+        let root = self.on_its_line(Complex64::new(root.re, fold(root.im, omega)));
         let close = |known: &Complex64| (known - root).norm() < 1e-7 * (root.norm() + 1e-3 * omega);
         // Far left of the axis F oscillates between the poles of vorticity modes: nothing there concerns us.
         if self.found.iter().any(close) || root.re < -2.0 * omega || !root.is_finite() {
@@ -329,7 +374,16 @@ where
                 }
             }
         }
-        ys.iter().filter_map(|y| self.extrapolated(*y)).for_each(consider);
+        ys.iter().filter_map(|y| self.extrapolated(*y)).for_each(&mut consider);
+        let omega = self.hill.omega;
+        let limit = best.map_or(-2.0 * omega, |known| known.re);
+        for im in [0.0, 0.5 * omega] {
+            if let Some(root) = self.slow_on_line(im, limit)
+                && best.is_none_or(|known| root.re > known.re)
+            {
+                best = Some(root);
+            }
+        }
         best
     }
 
@@ -370,6 +424,38 @@ where
         let root = polished.or(vanishes.then_some(guess))?;
         let folded = fold(root.im, omega);
         Some(Complex64::new(root.re, if folded < REAL * omega { 0.0 } else { folded }))
+    }
+
+    /// An exponent close to Im s = 0 or ω/2, where the determinant is real, is looked for on that line itself: rounding
+    /// must not make a lone real exponent look like one of a pair.
+    fn on_its_line(&self, root: Complex64) -> Complex64 {
+        let omega = self.hill.omega;
+        let line = if root.im < 0.25 * omega { 0.0 } else { 0.5 * omega };
+        let away = (root.im - line).abs();
+        if away < REAL * omega {
+            return Complex64::new(root.re, line);
+        }
+        if away > NEARLY_REAL * omega {
+            return root;
+        }
+        let upper = line > 0.0;
+        let real = |x: Complex64| Complex64::new(self.full(Complex64::new(x.re, line), upper).re, 0.0);
+        match muller(Complex64::new(root.re, 0.0), real, 30, 1e-13) {
+            Some(found) if found.im == 0.0 && (found.re - root.re).abs() < 2.0 * away => {
+                Complex64::new(found.re, line)
+            }
+            _ => root,
+        }
+    }
+
+    /// The slowest decaying interface mode on the real line Im s = `im` (0 or ω/2) with Re s between `limit` < 0 and
+    /// 0: a change of sign that is no pole. Overdamped modes sit there, often so close to the origin that nothing on
+    /// the axis points to them.
+    fn slow_on_line(&self, im: f64, limit: f64) -> Option<Complex64> {
+        let upper = im > 0.0;
+        let value = |x: f64| self.full(Complex64::new(x, im), upper).re;
+        slowest_zero(value, limit, |x| self.is_interface_mode(Complex64::new(x, im)))
+            .map(|x| Complex64::new(x, im))
     }
 
     /// |F| at a point over |F| a small step away.
