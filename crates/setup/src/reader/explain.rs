@@ -87,7 +87,7 @@ fn is_control(c: char) -> bool {
 }
 
 /// The line end that a file uses.
-fn newline(text: &str) -> &'static str {
+pub(super) fn newline(text: &str) -> &'static str {
     if text.contains("\r\n") { "\r\n" } else { "\n" }
 }
 

@@ -192,15 +192,15 @@ impl<'a> Reader<'a> {
     }
 
     fn lone_returns(&mut self, span: Span) {
-        let text = &self.text[span.clone()];
-        let mended = text.replace("\r\n", "\n").replace('\r', "\n");
+        let newline = explain::newline(self.text);
+        let mended = self.text[span.clone()].replace("\r\n", "\n").replace('\r', "\n").replace('\n', newline);
         self.tell(Slip {
             kind: SlipKind::Unreadable,
             span: span.start..span.start + 1,
             message: "a line ends with a carriage return alone, which other readers of the file refuse"
                 .to_owned(),
             related: None,
-            mend: Some(("End the lines with line feeds".to_owned(), mended)),
+            mend: Some(("End every line as the others end".to_owned(), mended)),
             statement: span,
             lost_key: None,
         });
