@@ -46,7 +46,7 @@ fn check(file: &str, options: &Check, engine: &Engine) -> Done {
                 for i in 0..analysis.findings.len() {
                     if analysis.findings[i].fixable {
                         let fixes = checks::changes(&text, &analysis, engine, i, &|| false);
-                        analysis.findings[i].fixes.extend(fixes);
+                        checks::offer(&mut analysis.findings[i], fixes);
                     }
                 }
             }
