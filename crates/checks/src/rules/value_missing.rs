@@ -1,17 +1,21 @@
 //! Figures that turn out to be missing when the stack is built, under the name `value-missing` of the reading
-//! rules, unless those have said so already.
+//! rules, unless those have said so already or have refused what stands there: one cause, one finding.
 
 use super::Context;
 use super::context::found;
 use crate::derived::Trouble;
-use setup::finding::Finding;
+use setup::finding::{Finding, Severity};
+use std::collections::HashSet;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let troubles = context.outcome.troubles.iter();
+    // Each figure that needs the missing one tells of it.
+    let mut told = HashSet::new();
     troubles
         .filter_map(|trouble| {
             let Trouble::FigureMissing { place, figure } = trouble else { return None };
-            if context.said.iter().any(|finding| finding.rule == "value-missing" && finding.place == *place) {
+            let is_said = |finding: &Finding| finding.severity == Severity::Error && finding.place == *place;
+            if context.said.iter().any(is_said) || !told.insert(place) {
                 return None;
             }
             let what = format!("`{figure}` is not given, and the computation needs it.");
@@ -32,5 +36,7 @@ mod tests {
         let place = "fluid.brew.density".to_owned();
         case.outcome.troubles.push(Trouble::FigureMissing { place: place.clone(), figure: "density" });
         assert_eq!(case.only("value-missing").place, place);
+        case.outcome.troubles.push(Trouble::FigureMissing { place: place.clone(), figure: "density" });
+        assert_eq!(case.only("value-missing").place, place, "once, however many figures need it");
     }
 }

@@ -79,13 +79,15 @@ pub const SHARE: Bounds = Bounds::from(0.0, 1.0, "0 to 100 %", "it is a share of
 pub const MARGIN: Bounds = Bounds::from(0.0, 10.0, "0 to 1000 %", "a negative margin asks for a failure");
 /// A ratio that may exceed one.
 pub const RATIO: Bounds = Bounds::from(0.0, 100.0, "0 to 100", SLIP);
+/// 5/3 of a monatomic gas as data sheets round it, 1.667 or 1.67.
+const MONATOMIC: f64 = 1.67;
 /// Ratio of specific heats.
 pub const ADIABATIC_INDEX: Bounds =
-    Bounds::above(1.0, 5.0 / 3.0 + 1e-9, "more than 1 and at most 5/3", "no ideal gas has another");
+    Bounds::above(1.0, MONATOMIC, "more than 1 and at most 5/3 (1.67)", "no ideal gas has another");
 /// Polytropic exponent.
 pub const POLYTROPIC: Bounds = Bounds::from(
     1.0,
-    5.0 / 3.0 + 1e-9,
+    MONATOMIC,
     "1 (isothermal) to 5/3 (adiabatic, monatomic)",
     "no gas spring is outside",
 );
