@@ -39,7 +39,8 @@ fn file(checked: &Checked, encoding: Encoding) -> Value {
     object.insert("path".to_owned(), json!(checked.path));
     object.insert("kind".to_owned(), json!(kind));
     object.insert("verdict".to_owned(), json!(checked.analysis.verdict.word()));
-    let findings: Vec<_> = checked.analysis.findings.iter().map(|finding| self::finding(finding, &at)).collect();
+    let findings: Vec<_> =
+        checked.analysis.findings.iter().map(|finding| self::finding(finding, &at)).collect();
     object.insert("findings".to_owned(), Value::Array(findings));
     if let Some(derived) = &checked.analysis.derived {
         object.insert("results".to_owned(), results(derived));
@@ -65,20 +66,15 @@ impl Positions<'_> {
 }
 
 fn finding(finding: &Finding, at: &Positions) -> Value {
-    let values: Map<String, Value> = finding
-        .values
-        .iter()
-        .filter_map(|(name, value)| Some(((*name).to_owned(), json(*value)?)))
-        .collect();
+    let values: Map<String, Value> =
+        finding.values.iter().filter_map(|(name, value)| Some(((*name).to_owned(), json(*value)?))).collect();
     let mut object = Map::new();
     object.insert("id".to_owned(), json!(finding.rule));
     object.insert("severity".to_owned(), json!(word(finding.severity)));
     object.insert("place".to_owned(), json!(finding.place));
     object.insert("message".to_owned(), json!(finding.message.text()));
     object.insert("range".to_owned(), at.range(&finding.span));
-    let related = |related: &setup::finding::Related| {
-        json!({ "path": at.path, "message": related.message, "range": at.range(&related.span) })
-    };
+    let related = |related: &setup::finding::Related| json!({ "path": at.path, "message": related.message, "range": at.range(&related.span) });
     object.insert("related".to_owned(), finding.related.iter().map(related).collect());
     object.insert("values".to_owned(), Value::Object(values));
     object.insert("fixable".to_owned(), json!(finding.fixable));
@@ -91,7 +87,8 @@ fn finding(finding: &Finding, at: &Positions) -> Value {
 }
 
 fn fix(fix: &Fix, at: &Positions) -> Value {
-    let edit = |edit: &Edit| json!({ "path": at.path, "range": at.range(&edit.span), "new_text": edit.new_text });
+    let edit =
+        |edit: &Edit| json!({ "path": at.path, "range": at.range(&edit.span), "new_text": edit.new_text });
     json!({
         "title": fix.title,
         "keeps_meaning": fix.keeps_meaning,
@@ -127,7 +124,10 @@ fn results(derived: &Derived) -> Value {
         "not_looked_at".to_owned(),
         not_looked_at.map(|n| json!({ "check": n.check, "needs": n.needs })).collect(),
     );
-    object.insert("effects_off".to_owned(), derived.effects_off.iter().map(|effect| json!(effect.name())).collect());
+    object.insert(
+        "effects_off".to_owned(),
+        derived.effects_off.iter().map(|effect| json!(effect.name())).collect(),
+    );
     Value::Object(object)
 }
 

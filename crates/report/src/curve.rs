@@ -59,7 +59,8 @@ pub fn table(curve: &Curve) -> String {
         .into_iter()
         .flatten()
         .collect();
-        let neutral = if neutral.is_empty() { format!("none up to {:.0}", curve.up_to) } else { neutral.join("; ") };
+        let neutral =
+            if neutral.is_empty() { format!("none up to {:.0}", curve.up_to) } else { neutral.join("; ") };
         out += &format!(
             "{:>12.2}  {:>12.3}  {:>12.4}  {:<11}  {neutral}\n",
             point.wavenumber,

@@ -28,7 +28,12 @@ pub fn findings(checked: &Checked, style: Style) -> String {
         let shown = Shown { finding, source: &source, length: checked.text.len() };
         // Drawing into a string fails only where the source cannot be read; the plain line then stands for it.
         if handler.render_report(&mut out, &shown).is_err() {
-            out += &format!("{}: {} [{}]\n", word(finding.severity), one_line(&finding.message.text()), finding.rule);
+            out += &format!(
+                "{}: {} [{}]\n",
+                word(finding.severity),
+                one_line(&finding.message.text()),
+                finding.rule
+            );
         }
         out.push('\n');
     }
@@ -55,7 +60,9 @@ pub fn summary(checked: &Checked) -> String {
     if accepted > 0 {
         parts.push(format!("{accepted} of them accepted"));
     }
-    if let Some(window) = checked.analysis.derived.as_ref().and_then(|derived| derived.window) {
+    let window = checked.analysis.derived.as_ref().and_then(|derived| derived.window);
+    // Where something fails the findings say by how much.
+    if let Some(window) = window.filter(|_| checked.analysis.verdict != checks::Verdict::Fails) {
         let percent = |ratio: f64| format!("{:.0} %", 100.0 * ratio);
         if let Some(margin) = window.hold_margin().filter(|_| window.exists) {
             parts.push(format!("hold margin {}", percent(margin)));
@@ -116,8 +123,11 @@ impl Diagnostic for Shown<'_> {
 
     fn help<'a>(&'a self) -> Option<Box<dyn fmt::Display + 'a>> {
         let message = &self.finding.message;
-        let parts: Vec<_> =
-            [&message.why, &message.remedy].into_iter().filter(|part| !part.is_empty()).map(|s| one_line(s)).collect();
+        let parts: Vec<_> = [&message.why, &message.remedy]
+            .into_iter()
+            .filter(|part| !part.is_empty())
+            .map(|s| one_line(s))
+            .collect();
         let mut text = parts.join(" ");
         for fix in &self.finding.fixes {
             text += &format!("\n- {}", one_line(&fix.title));
@@ -134,8 +144,11 @@ impl Diagnostic for Shown<'_> {
             return None;
         }
         let primary = self.label(Some("here".to_owned()), &self.finding.span);
-        let related =
-            self.finding.related.iter().map(|related| self.label(Some(one_line(&related.message)), &related.span));
+        let related = self
+            .finding
+            .related
+            .iter()
+            .map(|related| self.label(Some(one_line(&related.message)), &related.span));
         Some(Box::new(std::iter::once(primary).chain(related)))
     }
 }

@@ -3,6 +3,7 @@
 
 mod air;
 mod ethanol_water;
+mod gas;
 mod glycerol_water;
 mod nitrogen;
 mod silicone_oil;
@@ -159,7 +160,7 @@ struct Temperatures {
 impl Temperatures {
     fn check(&self, value: f64) -> Result<(), Unavailable> {
         let Temperatures { low, high, source } = *self;
-        if (low..=high).contains(&value) {
+        if within(value, low, high) {
             Ok(())
         } else {
             Err(Unavailable::Temperature { value, low, high, source })
@@ -167,17 +168,19 @@ impl Temperatures {
     }
 }
 
-/// Pressures at which liquids count as incompressible and gases as ideal, Pa.
+/// Whether a value lies in a range; a bound as a person writes it (`"5 mm²/s"`) may differ from it by rounding.
+fn within(value: f64, low: f64, high: f64) -> bool {
+    const ROUNDING: f64 = 1e-12;
+    (low - ROUNDING * low.abs()..=high + ROUNDING * high.abs()).contains(&value)
+}
+
+/// Pressures at which mixtures and oils count as incompressible and gases as ideal, Pa.
 const PRESSURES: (f64, f64) = (1e3, 1e6);
 
 fn check_pressure(value: f64) -> Result<(), Unavailable> {
     let (low, high) = PRESSURES;
-    let source = "judgement: liquids as incompressible, gases as ideal";
-    if (low..=high).contains(&value) {
-        Ok(())
-    } else {
-        Err(Unavailable::Pressure { value, low, high, source })
-    }
+    let source = "judgement: mixtures and oils as incompressible, gases as ideal";
+    if within(value, low, high) { Ok(()) } else { Err(Unavailable::Pressure { value, low, high, source }) }
 }
 
 fn property(value: f64, source: &'static str, uncertainty: f64) -> Result<Property, Unavailable> {
@@ -187,7 +190,7 @@ fn property(value: f64, source: &'static str, uncertainty: f64) -> Result<Proper
 impl Material {
     fn mass_fraction(&self, source: &'static str) -> Result<f64, Unavailable> {
         let value = self.mass_fraction.ok_or(Unavailable::MissingMassFraction)?;
-        if (0.0..=1.0).contains(&value) {
+        if within(value, 0.0, 1.0) {
             Ok(value)
         } else {
             Err(Unavailable::Composition { value, low: 0.0, high: 1.0, source })
@@ -195,14 +198,14 @@ impl Material {
     }
 }
 
-/// Density, kg/m³, at a temperature (K) and, for a gas, a pressure (Pa absolute).
+/// Density, kg/m³, at a temperature (K) and a pressure (Pa absolute).
 ///
 /// # Errors
 /// [`Unavailable`].
 pub fn density(material: &Material, temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     check_pressure(pressure)?;
     match material.fluid {
-        BuiltInFluid::Water => water::density(temperature),
+        BuiltInFluid::Water => water::density(temperature, pressure),
         BuiltInFluid::GlycerolWater => glycerol_water::density(material, temperature),
         BuiltInFluid::EthanolWater => ethanol_water::density(material, temperature),
         BuiltInFluid::SiliconeOil => silicone_oil::density(material, temperature),
@@ -218,12 +221,12 @@ pub fn density(material: &Material, temperature: f64, pressure: f64) -> Result<P
 pub fn viscosity(material: &Material, temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     check_pressure(pressure)?;
     match material.fluid {
-        BuiltInFluid::Water => water::viscosity(temperature),
+        BuiltInFluid::Water => water::viscosity(temperature, pressure),
         BuiltInFluid::GlycerolWater => glycerol_water::viscosity(material, temperature),
         BuiltInFluid::EthanolWater => ethanol_water::viscosity(material, temperature),
         BuiltInFluid::SiliconeOil => silicone_oil::viscosity(material, temperature),
-        BuiltInFluid::Air => air::viscosity(temperature),
-        BuiltInFluid::Nitrogen => nitrogen::viscosity(temperature),
+        BuiltInFluid::Air => air::viscosity(temperature, pressure),
+        BuiltInFluid::Nitrogen => nitrogen::viscosity(temperature, pressure),
     }
 }
 
@@ -241,7 +244,7 @@ pub fn surface_tension(material: &Material, temperature: f64) -> Result<Property
     }
 }
 
-/// Ratio of the specific heats of a gas.
+/// Ratio of the specific heats of a gas near atmospheric pressure.
 ///
 /// # Errors
 /// [`Unavailable`].

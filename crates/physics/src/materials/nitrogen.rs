@@ -1,6 +1,8 @@
 //! Nitrogen: ideal gas; Sutherland formulas of viscosity and conductivity with the constants of White, Viscous Fluid
-//! Flow (tables 1-2 and 1-3), from memory, ±2 %.
+//! Flow (tables 1-2 and 1-3), from memory, ±2 %. Compared with Lemmon & Jacobsen, Int. J. Thermophys. 25, 21 (2004),
+//! in the tests against reference libraries.
 
+use super::gas::{dense_gas, ideal_density_uncertainty};
 use super::{Property, Temperatures, Unavailable, property};
 
 const SOURCE: &str = "Sutherland constants of White, Viscous Fluid Flow, from memory";
@@ -15,20 +17,22 @@ fn sutherland(at_273: f64, constant: f64, temperature: f64) -> f64 {
 
 pub(super) fn density(temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     TEMPERATURES.check(temperature)?;
-    property(pressure / (GAS_CONSTANT * temperature), "ideal gas", 1e-3)
+    let uncertainty = ideal_density_uncertainty(temperature, pressure);
+    property(pressure / (GAS_CONSTANT * temperature), "ideal gas", uncertainty)
 }
 
-pub(super) fn viscosity(temperature: f64) -> Result<Property, Unavailable> {
+pub(super) fn viscosity(temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     TEMPERATURES.check(temperature)?;
-    property(sutherland(1.663e-5, 107.0, temperature), SOURCE, 0.02)
+    property(sutherland(1.663e-5, 107.0, temperature), SOURCE, 0.02 + dense_gas(pressure))
 }
 
 pub(super) fn adiabatic_index(temperature: f64) -> Result<Property, Unavailable> {
     TEMPERATURES.check(temperature)?;
-    property(1.4, "diatomic ideal gas", 2e-3)
+    property(1.4, "diatomic ideal gas", 4e-3)
 }
 
 pub(super) fn thermal_diffusivity(temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     let density = density(temperature, pressure)?.value;
-    property(sutherland(0.0242, 150.0, temperature) / (density * 3.5 * GAS_CONSTANT), SOURCE, 0.03)
+    let value = sutherland(0.0242, 150.0, temperature) / (density * 3.5 * GAS_CONSTANT);
+    property(value, SOURCE, 0.03 + dense_gas(pressure))
 }

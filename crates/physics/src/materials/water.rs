@@ -1,8 +1,9 @@
-//! Water at atmospheric pressure.
+//! Water.
 //!
 //! Density: Tanaka, Girard, Davis, Peuto & Bignell, Metrologia 38, 301 (2001), 0 to 40 °C, air-free; above, Kell, J.
-//! Chem. Eng. Data 20, 97 (1975). The two meet at 40 °C to 1e-5 (tested). Viscosity: IAPWS R12-08 (2008) with the
-//! critical enhancement μ₂ = 1, at that density. Surface tension: IAPWS R1-76(2014).
+//! Chem. Eng. Data 20, 97 (1975). The two meet at 40 °C to 1e-5 (tested). Both hold at one atmosphere; from there by
+//! Kell's compressibility. Viscosity: IAPWS R12-08 (2008) with the critical enhancement μ₂ = 1, at that density.
+//! Surface tension: IAPWS R1-76(2014).
 
 use super::{Property, Temperatures, Unavailable, property};
 
@@ -10,6 +11,8 @@ const TANAKA: &str = "Tanaka et al., Metrologia 38, 301 (2001)";
 const KELL: &str = "Kell, J. Chem. Eng. Data 20, 97 (1975)";
 /// Where one density correlation hands over to the other, K.
 const HANDOVER: f64 = 313.15;
+/// Of both, Pa.
+const ATMOSPHERE: f64 = 101_325.0;
 
 pub(super) const DENSITY: Temperatures = Temperatures { low: 273.15, high: 373.15, source: KELL };
 pub(super) const VISCOSITY: Temperatures =
@@ -17,10 +20,23 @@ pub(super) const VISCOSITY: Temperatures =
 pub(super) const TENSION: Temperatures =
     Temperatures { low: 273.15, high: 373.15, source: "IAPWS R1-76 (2014)" };
 
-pub(super) fn density(temperature: f64) -> Result<Property, Unavailable> {
+pub(super) fn density(temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     DENSITY.check(temperature)?;
     let t = temperature - 273.15;
-    if temperature <= HANDOVER { property(tanaka(t), TANAKA, 1e-6) } else { property(kell(t), KELL, 1e-5) }
+    let squeeze = 1.0 + compressibility(t) * (pressure - ATMOSPHERE);
+    if temperature <= HANDOVER {
+        property(tanaka(t) * squeeze, TANAKA, 2e-6)
+    } else {
+        property(kell(t) * squeeze, KELL, 1e-5)
+    }
+}
+
+/// Isothermal, at one atmosphere, 1/Pa; Kell (1975), in °C.
+fn compressibility(t: f64) -> f64 {
+    let numerator = 50.884_96
+        + t * (0.616_381_3
+            + t * (1.459_187e-3 + t * (20.084_38e-6 + t * (-58.477_27e-9 + t * 410.411_0e-12))));
+    1e-11 * numerator / (1.0 + 19.673_48e-3 * t)
 }
 
 fn tanaka(t: f64) -> f64 {
@@ -34,9 +50,9 @@ fn kell(t: f64) -> f64 {
     numerator / (1.0 + 16.879_850e-3 * t)
 }
 
-pub(super) fn viscosity(temperature: f64) -> Result<Property, Unavailable> {
+pub(super) fn viscosity(temperature: f64, pressure: f64) -> Result<Property, Unavailable> {
     VISCOSITY.check(temperature)?;
-    let density = density(temperature)?.value;
+    let density = density(temperature, pressure)?.value;
     property(1e-6 * iapws_viscosity(temperature, density), VISCOSITY.source, 0.01)
 }
 

@@ -89,6 +89,7 @@ where
     /// The number of exponents right of the line at the acceleration `a`. Samples that the refinement needs stay
     /// for later accelerations.
     pub fn count(&mut self, hill: &Hill<D>, a: f64, wavenumber: f64) -> Result<Count, Failure> {
+        hill.meter.check()?;
         let mut values: Vec<Complex64> = self.samples.iter().map(|(_, h)| hill.determinant(h, a)).collect();
         let mut i = 0;
         let smallest_gap = 0.5 * hill.omega / (1u64 << DEEPEST) as f64;
@@ -100,6 +101,7 @@ where
                 i += 1;
                 continue;
             }
+            hill.meter.check()?;
             let harmonics = hill.harmonics(Complex64::new(self.sigma, middle));
             let value = hill.determinant(&harmonics, a);
             let straight = bends_little(values[i], value, values[i + 1]);

@@ -11,7 +11,7 @@
 
 use super::count::{Line, fold};
 use super::failure::Failure;
-use super::hill::{Hill, Reference, muller};
+use super::hill::{Hill, Meter, Reference, muller};
 use super::layered::{Forcing, Layered, Response};
 use super::stiffness::{Size, Stiffness};
 use super::unforced;
@@ -78,7 +78,7 @@ where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
     let stiffness = Stiffness::new(layered, k, size);
-    let hill = Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION);
+    let hill = Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION, Meter::default());
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
     let mut line = Line::new(&hill, 0.0, &hints);
     leading_of(&hill, &hints, &mut line, forcing.acceleration, k, cancel)

@@ -27,6 +27,11 @@ pub enum Failure {
         /// … and below this, 1/s.
         below: f64,
     },
+    /// The question costs more than any setup of a laboratory should.
+    TooMuchWork {
+        /// Matrices of the layers' response that were evaluated before it was given up.
+        blocks: u64,
+    },
     /// A number that the problem needs is not finite or not positive.
     Unusable {
         /// Which.
@@ -49,6 +54,11 @@ impl std::fmt::Display for Failure {
                 f,
                 "at {wavenumber:.4} 1/m and {acceleration:.4} m/s² an exponent between {above:.4e} and \
                  {below:.4e} 1/s could not be located"
+            ),
+            Failure::TooMuchWork { blocks } => write!(
+                f,
+                "given up after {blocks} evaluations of the layers' response: too many modes stir, or the drive is too \
+                 strong for this version"
             ),
             Failure::Unusable { quantity, value } => write!(f, "{quantity} is {value}"),
         }

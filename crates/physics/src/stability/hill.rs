@@ -13,13 +13,38 @@
 //! elimination is backward stable: |M_n| grows like n², so the tail hardly matters and no row is ever scaled by its
 //! own entries (which would hide the root at a = 0).
 
+use super::failure::Failure;
 use super::stiffness::{Size, Square, Stiffness};
 use nalgebra::allocator::Allocator;
 use nalgebra::{DefaultAllocator, OVector};
 use num_complex::Complex64;
+use std::cell::Cell;
+use std::rc::Rc;
 
 /// Harmonics beyond which the truncation cannot matter at the accuracy claimed.
 const MOST_HARMONICS: usize = 60;
+
+/// Blocks M(Λ) that one question may cost: about ten seconds. Beyond it lie thousands of stirring modes (thin liquids
+/// in wide cells far above their first waves), 100 standard gravities at a fifth of a hertz, films of micrometres;
+/// they end as a typed outcome.
+const MOST_BLOCKS: u64 = 20_000_000;
+
+/// Counts the work that one question costs.
+#[derive(Debug, Clone, Default)]
+pub(super) struct Meter(Rc<Cell<u64>>);
+
+impl Meter {
+    fn charge(&self, blocks: usize) {
+        self.0.set(self.0.get() + blocks as u64);
+    }
+
+    /// # Errors
+    /// [`Failure::TooMuchWork`] once the question has cost too much.
+    pub fn check(&self) -> Result<(), Failure> {
+        let blocks = self.0.get();
+        if blocks > MOST_BLOCKS { Err(Failure::TooMuchWork { blocks }) } else { Ok(()) }
+    }
+}
 
 /// M at every harmonic of one point of the strip, without the drive's amplitude.
 pub(super) struct Harmonics<D: Size>
@@ -52,6 +77,8 @@ where
     /// Where the axis is taken, 1/s: 0, or a hair to the right of it where an interface has no static stiffness at
     /// all (equal fluids), whose neutral exponent at s = 0 would make F indefinite there.
     pub axis: f64,
+    /// Shared by everything that belongs to one question.
+    pub meter: Meter,
 }
 
 impl<D: Size> Hill<D>
@@ -60,11 +87,16 @@ where
 {
     /// `up_to` is the largest acceleration that will be asked for; it sets how many harmonics are kept: the
     /// neglected ones change a pivot by less than `accuracy` relative.
-    pub fn new(stiffness: Stiffness<D>, omega: f64, up_to: f64, accuracy: f64) -> Self {
+    pub fn new(stiffness: Stiffness<D>, omega: f64, up_to: f64, accuracy: f64, meter: Meter) -> Self {
         let stiffest = stiffness.statics.amax();
         let idle = stiffness.statics.iter().any(|k| k.abs() <= 1e-13 * stiffest);
-        let mut hill =
-            Hill { stiffness, omega, reach: MOST_HARMONICS, axis: if idle { 1e-9 * omega } else { 0.0 } };
+        let mut hill = Hill {
+            stiffness,
+            omega,
+            reach: MOST_HARMONICS,
+            axis: if idle { 1e-9 * omega } else { 0.0 },
+            meter,
+        };
         let mut influence = 1.0;
         for n in 1..=MOST_HARMONICS {
             let block = hill.stiffness.at(Complex64::new(0.0, (n as f64 - 0.5) * omega));
@@ -89,6 +121,7 @@ where
     fn harmonics_for(&self, s: Complex64, upper_half: bool) -> Harmonics<D> {
         let reach = self.reach as i64;
         let first = if upper_half { -reach - 1 } else { -reach };
+        self.meter.charge((reach - first + 1) as usize);
         let blocks: Vec<_> = (first..=reach)
             .map(|n| self.stiffness.at(s + Complex64::new(0.0, n as f64 * self.omega)))
             .collect();
@@ -184,6 +217,7 @@ where
 
     /// ‖M(iy)⁻¹G‖ (Frobenius): how far a harmonic follows a unit of extra gravity (see `screen`).
     pub fn gain(&self, y: f64) -> f64 {
+        self.meter.charge(1);
         self.stiffness.at(Complex64::new(0.0, y)).try_inverse().map_or(f64::INFINITY, |mut inverse| {
             for (i, mut column) in inverse.column_iter_mut().enumerate() {
                 column *= Complex64::new(self.stiffness.weight[i], 0.0);
@@ -206,6 +240,7 @@ where
             }
             inverse
         };
+        self.meter.charge(harmonics.blocks.len());
         let centre = harmonics.centre;
         let last = harmonics.blocks.len() - 1;
         let mut side = |indices: &mut dyn Iterator<Item = usize>| -> Option<Square<D>> {

@@ -9,7 +9,7 @@
 use super::count::{Count, Line};
 use super::exponent::TRUNCATION;
 use super::failure::Failure;
-use super::hill::Hill;
+use super::hill::{Hill, Meter};
 use super::layered::{Forcing, Layered, Response};
 use super::stiffness::{Size, Stiffness};
 use super::unforced;
@@ -60,7 +60,7 @@ fn all<D: Size>(
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    let hill = Hill::new(Stiffness::new(layered, k, size), omega, up_to, TRUNCATION);
+    let hill = Hill::new(Stiffness::new(layered, k, size), omega, up_to, TRUNCATION, Meter::default());
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
     let mut line = Line::new(&hill, 0.0, &hints);
     let mut neutral = Neutral {

@@ -13,7 +13,7 @@
 use super::count::{Count, Line};
 use super::exponent::{Growth, TRUNCATION, leading_of, liveliest};
 use super::failure::Failure;
-use super::hill::Hill;
+use super::hill::{Hill, Meter};
 use super::layered::{Forcing, Layered, Response};
 use super::modes::{cell_modes, mode_density};
 use super::neutral::border;
@@ -165,9 +165,11 @@ impl<D: Size> Probe<D>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    fn new(layered: &Layered, omega: f64, up_to: f64, wavenumber: f64, mode: Mode, size: D) -> Self {
-        let hill = Hill::new(Stiffness::new(layered, wavenumber, size), omega, up_to, TRUNCATION);
-        let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(wavenumber));
+    fn new(judge: &Judge<D>, wavenumber: f64, mode: Mode) -> Self {
+        let stiffness = Stiffness::new(judge.layered, wavenumber, judge.size);
+        let omega = judge.forcing.omega;
+        let hill = Hill::new(stiffness, omega, judge.up_to, TRUNCATION, judge.meter.clone());
+        let hints = unforced::hints(&hill.stiffness, judge.layered.viscous_decay(wavenumber));
         let falls_at_rest = hill.stiffness.growing_without_drive(0.0) > 0;
         let quiet = quiet_up_to(&hill, &hints);
         Probe { wavenumber, mode, hill, hints, line: None, falls_at_rest, quiet, distance: f64::INFINITY }
@@ -263,6 +265,7 @@ where
     /// Beyond this wavenumber every mode is certified quiet up to the acceleration `covered`.
     wavenumbers_up_to: f64,
     covered: f64,
+    meter: Meter,
     /// Ascending in wavenumber, complete up to `wavenumbers_up_to`.
     probes: Vec<Probe<D>>,
 }
@@ -290,6 +293,7 @@ where
             up_to,
             wavenumbers_up_to: first.wavenumber,
             covered: -1.0,
+            meter: Meter::default(),
             probes: Vec::new(),
         };
         // The lowest mode is always there, so that something rings down even where nothing can stir.
@@ -298,7 +302,7 @@ where
     }
 
     fn probe(&self, wavenumber: f64, mode: Mode) -> Probe<D> {
-        Probe::new(self.layered, self.forcing.omega, self.up_to, wavenumber, mode, self.size)
+        Probe::new(self, wavenumber, mode)
     }
 
     /// Makes the probes complete for accelerations up to `a`: viscosity and tension keep everything quiet beyond
@@ -350,6 +354,7 @@ where
     }
 
     fn alive(&self) -> Result<(), Failure> {
+        self.meter.check()?;
         if (self.cancel)() { Err(Failure::Cancelled) } else { Ok(()) }
     }
 
