@@ -17,91 +17,82 @@ fn is_group_space(c: char) -> bool {
     matches!(c, ' ' | '\u{a0}' | '\u{2009}' | '\u{202f}')
 }
 
-/// Reads the number at the start of `text[from..]`; white space before it is skipped.
+/// Reads the number at the start of a part of the text; white space before it is skipped.
 ///
 /// # Errors
-/// No number there, a decimal comma, or a value that is not finite.
-pub(crate) fn read(text: &str, from: usize) -> Result<Number, Refusal> {
-    let start = from + (text[from..].len() - text[from..].trim_start().len());
-    let body = &text[start..];
+/// No number there, or a value that is not finite.
+pub(crate) fn read(text: &str, part: Range<usize>) -> Result<Number, Refusal> {
+    let whole = &text[part.clone()];
+    let start = part.end - whole.trim_start().len();
+    let body = &text[start..part.end];
     let mut plain = String::with_capacity(24);
-    let (mut end, mut digits, mut seen_point, mut significant) = (0, 0usize, false, 0usize);
-    let mut chars = body.char_indices().peekable();
-    while let Some(&(i, c)) = chars.peek() {
+    let (mut end, mut significant, mut seen_point) = (0, 0usize, false);
+    // Digits in all, and since the start, the point or the last space between groups.
+    let (mut digits, mut run, mut grouped) = (0usize, 0usize, false);
+    for (i, c) in body.char_indices() {
         match c {
             '+' | '-' | '−' if i == 0 => plain.push(if c == '+' { '+' } else { '-' }),
             '0'..='9' => {
                 plain.push(c);
                 digits += 1;
+                run += 1;
                 if significant > 0 || c != '0' {
                     significant += 1;
                 }
             }
             '.' if !seen_point => {
-                seen_point = true;
+                (seen_point, run, grouped) = (true, 0, false);
                 plain.push('.');
             }
-            c if is_group_space(c) && digits > 0 && groups_of_three(&body[i + c.len_utf8()..]) => {}
+            c if is_group_space(c) && digits > 0 => {
+                let whole_group = run == 3 || (!grouped && !seen_point && (1..=3).contains(&run));
+                if !whole_group || !three_digits(&body[i + c.len_utf8()..]) {
+                    break;
+                }
+                (run, grouped) = (0, true);
+            }
             _ => break,
         }
         end = i + c.len_utf8();
-        chars.next();
     }
-    let here = |range: Range<usize>| start + range.start..start + range.end;
     if digits == 0 {
-        let word = body.split_whitespace().next().unwrap_or("");
-        let bare = word.trim_start_matches(['+', '-', '−']).to_lowercase();
-        let range = here(0..word.len());
-        if ["nan", "inf", "infinity", "∞"].contains(&bare.as_str()) {
-            return Err(Refusal::new(
-                Reason::NotFinite,
-                range,
-                format!("\"{word}\" is no number that can be used; write a finite one."),
-            ));
-        }
-        let what = if word.is_empty() {
-            "there is no number".to_owned()
-        } else {
-            format!("\"{word}\" is no number")
-        };
-        return Err(Refusal::new(
-            Reason::NumberUnreadable,
-            range,
-            format!("{what}; write the number first, then its unit."),
-        ));
+        return Err(no_number(body, start));
     }
-    if body[end..].starts_with(',') && body[end + 1..].starts_with(|c: char| c.is_ascii_digit()) {
-        return Err(comma(text, start, end, &body[end + 1..]));
-    }
-    if body[end..].starts_with('.') {
-        let range = here(0..end + 1);
-        return Err(Refusal::new(
-            Reason::NumberUnreadable,
-            range,
-            "the number has two decimal points; keep one.",
-        ));
+    if seen_point && body[end..].starts_with('.') {
+        let message = "the number has two decimal points; keep one.";
+        return Err(Refusal::new(Reason::NumberUnreadable, start..start + end + 1, message));
     }
     end += exponent(&body[end..], &mut plain);
     let value: f64 = plain.parse().unwrap_or(f64::NAN);
     if !value.is_finite() {
-        return Err(Refusal::new(
-            Reason::NotFinite,
-            here(0..end),
-            format!("\"{}\" is beyond every number that can be used.", &body[..end]),
-        ));
+        let message = format!("\"{}\" is beyond every number that can be used.", &body[..end]);
+        return Err(Refusal::new(Reason::NotFinite, start..start + end, message));
     }
-    Ok(Number { value, range: here(0..end), digits: significant.clamp(1, 17) as u8 })
+    Ok(Number { value, range: start..start + end, digits: significant.clamp(1, 17) as u8 })
 }
 
 /// Whether exactly three digits follow (and no fourth).
-fn groups_of_three(rest: &str) -> bool {
-    let digits = rest.bytes().take_while(u8::is_ascii_digit).count();
-    digits == 3
+fn three_digits(rest: &str) -> bool {
+    rest.bytes().take_while(u8::is_ascii_digit).count() == 3
+}
+
+fn no_number(body: &str, start: usize) -> Refusal {
+    let word = body.split_whitespace().next().unwrap_or("");
+    let range = start..start + word.len();
+    let bare = word.trim_start_matches(['+', '-', '−']).to_lowercase();
+    if ["nan", "inf", "infinity", "∞"].contains(&bare.as_str()) {
+        let message = format!("\"{word}\" is no number that can be used; write a finite one.");
+        return Refusal::new(Reason::NotFinite, range, message);
+    }
+    let what =
+        if word.is_empty() { "there is no number".to_owned() } else { format!("\"{word}\" is no number") };
+    let message = format!("{what}; write the number first, then its unit.");
+    Refusal::new(Reason::NumberUnreadable, range, message)
 }
 
 /// An exponent `e-3`, `E3`, `×10^-3`, `x10⁻³`, `·10^5` at the start: its bytes; appended to `plain` in Rust's form.
 fn exponent(rest: &str, plain: &mut String) -> usize {
-    let sign = |c: char| matches!(c, '-' | '−' | '+' | '⁻');
+    let sign = |c: char| matches!(c, '-' | '−' | '+' | '⁻' | '⁺');
     if let Some(body) = rest.strip_prefix(['e', 'E']) {
         let signed = body.strip_prefix(sign).map_or(0, |after| body.len() - after.len());
         let digits = body[signed..].bytes().take_while(u8::is_ascii_digit).count();
@@ -125,7 +116,6 @@ fn exponent(rest: &str, plain: &mut String) -> usize {
         let digit = match c {
             c if sign(c) && i == 0 => {
                 negative = matches!(c, '-' | '−' | '⁻');
-                used = c.len_utf8();
                 continue;
             }
             '0'..='9' if body.len() != power.len() => c as i32 - '0' as i32,
@@ -145,27 +135,4 @@ fn exponent(rest: &str, plain: &mut String) -> usize {
     }
     plain.push_str(&format!("e{}{value}", if negative { "-" } else { "" }));
     rest.len() - power.len() + used
-}
-
-/// A comma between digits: a decimal comma, unless three digits follow, which may be thousands.
-fn comma(text: &str, start: usize, at: usize, after: &str) -> Refusal {
-    let digits = after.bytes().take_while(u8::is_ascii_digit).count();
-    let position = start + at;
-    let range = start..position + 1 + digits;
-    let with = |replacement: &str| format!("{}{replacement}{}", &text[..position], &text[position + 1..]);
-    let written = &text[range.clone()];
-    let message =
-        format!("\"{written}\" has a comma; numbers here have a decimal point, and thousands no mark.");
-    let refusal = Refusal::new(Reason::DecimalComma, range, message);
-    let decimal = with(".");
-    if digits == 3 {
-        let thousands = with("");
-        refusal.mend(format!("Read the comma as a decimal point: \"{decimal}\""), decimal, false).mend(
-            format!("Read the comma as a mark of thousands: \"{thousands}\""),
-            thousands,
-            false,
-        )
-    } else {
-        refusal.mend(format!("Write a decimal point: \"{decimal}\""), decimal, true)
-    }
 }

@@ -37,12 +37,14 @@ pub fn print_amplitude(peak: f64, kind: Kind, digits: u8) -> String {
     format!("{} peak", print(peak, kind, digits))
 }
 
-/// Size, offset and symbol of the unit in which the value has between one and four digits before the point; the
-/// natural unit of the kind where none has.
+/// Size, offset and symbol of the natural unit of the kind where the value has one to four digits before the point in
+/// it, else of the first in which it has one to three; the natural one where none has.
 fn suited(value: f64, kind: Kind) -> (f64, f64, &'static str) {
     let read = |symbol: &'static str| {
         unit::read(symbol, kind.is_acceleration()).ok().map(|unit| (unit.size, unit.offset, symbol))
     };
+    // A bare number cannot tell which viscosity it is; its SI unit is that of the dynamic one.
+    let kind = if kind == Kind::Viscosity { Kind::DynamicViscosity } else { kind };
     let list = units(kind);
     let natural = list.first().and_then(|symbol| read(symbol)).unwrap_or((1.0, 0.0, si_unit(kind)));
     // Kinds whose readers expect one unit whatever the size.
@@ -58,16 +60,13 @@ fn suited(value: f64, kind: Kind) -> (f64, f64, &'static str) {
     if fixed || value == 0.0 {
         return natural;
     }
-    let fits = |&(size, offset, _): &(f64, f64, &str)| {
-        let number = ((value - offset) / size).abs();
-        (1.0..10_000.0).contains(&number)
-    };
-    if fits(&natural) {
+    let number = |&(size, offset, _): &(f64, f64, &str)| ((value - offset) / size).abs();
+    if (1.0..10_000.0).contains(&number(&natural)) {
         return natural;
     }
     list.iter()
         .filter(|symbol| **symbol != "psi")
         .filter_map(|symbol| read(symbol))
-        .find(fits)
+        .find(|unit| (1.0..1000.0).contains(&number(unit)))
         .unwrap_or(natural)
 }

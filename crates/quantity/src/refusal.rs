@@ -60,8 +60,10 @@ pub enum Reason {
     ToleranceUnreadable,
     /// `?` where no value may be left open.
     OpenValueOutOfPlace,
-    /// A range or list that is none.
+    /// A range is wanted, and this is none.
     RangeUnreadable,
+    /// A range where one value is wanted.
+    RangeOutOfPlace,
 }
 
 impl Reason {
@@ -82,7 +84,8 @@ impl Reason {
             | Reason::ToleranceOneSided
             | Reason::ToleranceUnreadable
             | Reason::OpenValueOutOfPlace
-            | Reason::RangeUnreadable => "value-of-wrong-type",
+            | Reason::RangeUnreadable
+            | Reason::RangeOutOfPlace => "value-of-wrong-type",
         }
     }
 }
@@ -107,9 +110,12 @@ impl Refusal {
         self
     }
 
-    /// The same refusal of a text that begins `by` bytes earlier.
-    pub(crate) fn shifted(mut self, by: usize) -> Refusal {
-        self.range = self.range.start + by..self.range.end + by;
+    /// The same refusal of a text of which the refused one is a part: what stands before and behind it stays.
+    pub(crate) fn embedded(mut self, before: &str, behind: &str) -> Refusal {
+        self.range = self.range.start + before.len()..self.range.end + before.len();
+        for mend in &mut self.mends {
+            mend.text = format!("{before}{}{behind}", mend.text);
+        }
         self
     }
 }
