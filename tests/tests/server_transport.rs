@@ -237,6 +237,22 @@ fn the_process_ends_when_its_input_closes_whatever_is_under_way() {
     assert_eq!(bare.exit_code(A_WHILE), None, "the defect did not show");
 }
 
+/// Codes: JSON-RPC 2.0, section 5.1.
+#[test]
+fn a_message_that_cannot_be_made_out_does_not_end_the_reading() {
+    let run = |way: &str, within: Duration| {
+        let mut dialogue = session(way);
+        dialogue.send_bytes(b"Content-Length: 9\r\n\r\n{\"broken\"".to_vec());
+        let refusal = dialogue.hear(SOON, |said| said["error"]["code"].as_i64());
+        assert_eq!(refusal, Some(-32700), "{way}");
+        let next = command(&mut dialogue, "text");
+        dialogue.answer(next, within).is_some()
+    };
+    assert!(!run("bare", A_WHILE), "the defect did not show");
+    assert!(run("ordered", SOON));
+    assert!(run("topheavy", SOON));
+}
+
 /// `processId` of `initialize`: the server ends when that process does, though its input stays open.
 #[cfg(target_os = "linux")]
 #[test]

@@ -13,6 +13,7 @@ mod actions;
 pub mod documents;
 mod editor_process;
 mod hover;
+mod incoming;
 mod session;
 mod to_lsp;
 pub mod transport;
@@ -45,7 +46,7 @@ pub fn run() -> i32 {
 /// else 1.
 pub async fn serve<I, O>(input: I, output: O, analyse: Analyse) -> i32
 where
-    I: AsyncRead + Unpin,
+    I: AsyncRead + Unpin + Send + 'static,
     O: AsyncWrite + Unpin + Send + 'static,
 {
     let encoding = Arc::new(OnceLock::new());

@@ -11,9 +11,11 @@
 //!   that does not read.
 //! * The server ends when it is told to, when its input or output closes, or when the editor's process is gone,
 //!   whatever else is under way, with the exit code that the protocol asks for.
+//! * A message that cannot be made out is answered with an error and does not end the reading ([`incoming`]).
 //! * `"params": null` means no parameters; a request of unknown name is answered, whatever its name begins with.
 
 use crate::documents::{Documents, Message, World};
+use crate::incoming;
 use serde::de::DeserializeOwned;
 use serde_json::Value;
 use std::future::{Future, ready};
@@ -22,7 +24,7 @@ use std::sync::Arc;
 use std::sync::atomic::{AtomicBool, Ordering};
 use std::task::{Context, Poll};
 use std::time::Duration;
-use tokio::io::{AsyncRead, AsyncWrite, AsyncWriteExt, ReadBuf};
+use tokio::io::{AsyncRead, AsyncWrite, AsyncWriteExt};
 use tokio::sync::{mpsc, watch};
 use tower::Service;
 use tower_lsp::jsonrpc::{Error, Request, Response};
@@ -34,6 +36,9 @@ const GRACE_AFTER_EXIT: Duration = Duration::from_millis(50);
 const GRACE_AFTER_CLOSING: Duration = Duration::from_secs(2);
 /// How long an editor that does not read may keep the process from ending.
 const GRACE_FOR_OUTPUT: Duration = Duration::from_millis(500);
+
+/// Between the sifted input and `tower-lsp`, bytes.
+const PIPE: usize = 1 << 16;
 
 /// Why the server ends.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -70,12 +75,21 @@ pub async fn serve<S, I, O>(
 ) -> i32
 where
     S: LanguageServer,
-    I: AsyncRead + Unpin,
+    I: AsyncRead + Unpin + Send + 'static,
     O: AsyncWrite + Unpin + Send + 'static,
 {
     let (endings, mut ended) = mpsc::unbounded_channel();
     let life = Life { shutdown_seen: Arc::default(), endings };
     let (output, emptied) = pump(output, life.clone());
+    let (passed_on, messages) = tokio::io::duplex(PIPE);
+    let reading = tokio::spawn({
+        let (refusals, life) = (output.0.clone(), life.clone());
+        async move {
+            incoming::sift(input, passed_on, refusals).await;
+            // `tower-lsp` alone would wait now for every request under way.
+            life.end(Ending::Closed);
+        }
+    });
     {
         let ordered = Ordered {
             inner: service,
@@ -85,8 +99,7 @@ where
             sent: 0,
             life: life.clone(),
         };
-        let input = Watched { inner: input, life: life.clone() };
-        let serving = Server::new(input, output, socket).concurrency_level(usize::MAX).serve(ordered);
+        let serving = Server::new(messages, output, socket).concurrency_level(usize::MAX).serve(ordered);
         tokio::pin!(serving);
         let grace = tokio::select! {
             () = &mut serving => Duration::ZERO,
@@ -100,6 +113,7 @@ where
             let _ = tokio::time::timeout(grace, &mut serving).await;
         }
     }
+    reading.abort();
     let _ = tokio::time::timeout(GRACE_FOR_OUTPUT, emptied).await;
     i32::from(!life.shutdown_seen.load(Ordering::SeqCst))
 }
@@ -209,32 +223,6 @@ fn watch_editor(initialize: &Request, life: &Life) {
             editor.gone().await;
             life.end(Ending::EditorGone);
         });
-    }
-}
-
-/// Input that says when it is at its end: `tower-lsp` alone waits then for every request under way.
-struct Watched<I> {
-    inner: I,
-    life: Life,
-}
-
-impl<I: AsyncRead + Unpin> AsyncRead for Watched<I> {
-    fn poll_read(
-        mut self: Pin<&mut Self>,
-        context: &mut Context<'_>,
-        buffer: &mut ReadBuf<'_>,
-    ) -> Poll<std::io::Result<()>> {
-        let (filled, room) = (buffer.filled().len(), buffer.remaining());
-        let read = Pin::new(&mut self.inner).poll_read(context, buffer);
-        let at_end = match &read {
-            Poll::Ready(Ok(())) => room > 0 && buffer.filled().len() == filled,
-            Poll::Ready(Err(_)) => true,
-            Poll::Pending => false,
-        };
-        if at_end {
-            self.life.end(Ending::Closed);
-        }
-        read
     }
 }
 
