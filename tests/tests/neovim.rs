@@ -2,6 +2,8 @@
 //!
 //! Without Neovim on the machine the test says so and passes, unless `TOPHEAVY_EDITORS=required` is set.
 
+#![allow(clippy::unwrap_used)] // also in the helpers of these tests
+
 use std::process::{Command, Stdio};
 use std::time::Duration;
 use topheavy_tests::dialogue::{topheavy, until};

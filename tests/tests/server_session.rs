@@ -1,6 +1,8 @@
 //! What an editor gets from the language server: findings, hover texts, mends and changes, whatever the order in
 //! which it asks.
 
+#![allow(clippy::unwrap_used)] // also in the helpers of these tests
+
 use serde_json::{Value, json};
 use setup::lines::{Encoding, LineIndex, Position};
 use std::time::Duration;

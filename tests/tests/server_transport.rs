@@ -4,6 +4,8 @@
 //! Requirements: Language Server Protocol 3.17, sections "Base Protocol" (cancellation, `$/`), "Lifecycle Messages"
 //! (exit codes) and "Text Document Synchronization" (order and versions).
 
+#![allow(clippy::unwrap_used)] // also in the helpers of these tests
+
 use serde_json::{Value, json};
 use std::time::{Duration, Instant};
 use topheavy_tests::dialogue::{Dialogue, SOON};
