@@ -134,6 +134,8 @@ pub struct Range {
     pub low: f64,
     /// Highest, SI.
     pub high: f64,
+    /// Of the correlation, or of the bound where it is our own judgement.
+    pub source: &'static str,
 }
 
 /// What a range bounds.
@@ -176,11 +178,15 @@ fn within(value: f64, low: f64, high: f64) -> bool {
 
 /// Pressures at which mixtures and oils count as incompressible and gases as ideal, Pa.
 const PRESSURES: (f64, f64) = (1e3, 1e6);
+const PRESSURES_SOURCE: &str = "judgement: mixtures and oils as incompressible, gases as ideal";
 
 fn check_pressure(value: f64) -> Result<(), Unavailable> {
     let (low, high) = PRESSURES;
-    let source = "judgement: mixtures and oils as incompressible, gases as ideal";
-    if within(value, low, high) { Ok(()) } else { Err(Unavailable::Pressure { value, low, high, source }) }
+    if within(value, low, high) {
+        Ok(())
+    } else {
+        Err(Unavailable::Pressure { value, low, high, source: PRESSURES_SOURCE })
+    }
 }
 
 fn property(value: f64, source: &'static str, uncertainty: f64) -> Result<Property, Unavailable> {
@@ -277,8 +283,8 @@ pub fn thermal_diffusivity(
 pub fn ranges() -> Vec<Range> {
     let mut ranges = Vec::new();
     let mut span = |fluid, property, temperatures: Temperatures| {
-        let Temperatures { low, high, .. } = temperatures;
-        ranges.push(Range { fluid, property, bounds: Bounds::Temperature, low, high });
+        let Temperatures { low, high, source } = temperatures;
+        ranges.push(Range { fluid, property, bounds: Bounds::Temperature, low, high, source });
     };
     use BuiltInFluid::{Air, EthanolWater, GlycerolWater, Nitrogen, SiliconeOil, Water};
     span(Water, "density", water::DENSITY);
@@ -297,20 +303,30 @@ pub fn ranges() -> Vec<Range> {
         span(Air, property, air::TEMPERATURES);
         span(Nitrogen, property, nitrogen::TEMPERATURES);
     }
-    let mut bound =
-        |fluid, property, bounds, (low, high)| ranges.push(Range { fluid, property, bounds, low, high });
+    let mut bound = |fluid, property, bounds, (low, high), source| {
+        ranges.push(Range { fluid, property, bounds, low, high, source });
+    };
+    for (fluid, property, Temperatures { source, .. }) in [
+        (GlycerolWater, "density", glycerol_water::DENSITY),
+        (GlycerolWater, "viscosity", glycerol_water::VISCOSITY),
+        (GlycerolWater, "surface tension", glycerol_water::TENSION),
+        (EthanolWater, "density", ethanol_water::DENSITY),
+        (EthanolWater, "viscosity", ethanol_water::VISCOSITY),
+        (EthanolWater, "surface tension", ethanol_water::TENSION),
+    ] {
+        bound(fluid, property, Bounds::Composition, (0.0, 1.0), source);
+    }
     for property in ["density", "viscosity", "surface tension"] {
-        bound(GlycerolWater, property, Bounds::Composition, (0.0, 1.0));
-        bound(EthanolWater, property, Bounds::Composition, (0.0, 1.0));
-        bound(SiliconeOil, property, Bounds::Grade, silicone_oil::GRADES);
+        let source = silicone_oil::TEMPERATURES.source;
+        bound(SiliconeOil, property, Bounds::Grade, silicone_oil::GRADES, source);
     }
     for fluid in BuiltInFluid::ALL {
         for property in ["density", "viscosity"] {
-            bound(fluid, property, Bounds::Pressure, PRESSURES);
+            bound(fluid, property, Bounds::Pressure, PRESSURES, PRESSURES_SOURCE);
         }
     }
     for fluid in [Air, Nitrogen] {
-        bound(fluid, "thermal diffusivity", Bounds::Pressure, PRESSURES);
+        bound(fluid, "thermal diffusivity", Bounds::Pressure, PRESSURES, PRESSURES_SOURCE);
     }
     ranges
 }

@@ -61,11 +61,11 @@ fn every_bound_from_both_sides() {
             }
             let refused = at(outside).expect_err("a value outside its range");
             let named = match (range.bounds, refused) {
-                (Bounds::Temperature, Unavailable::Temperature { low, high, .. })
-                | (Bounds::Composition, Unavailable::Composition { low, high, .. })
-                | (Bounds::Grade, Unavailable::Grade { low, high, .. })
-                | (Bounds::Pressure, Unavailable::Pressure { low, high, .. }) => {
-                    low == range.low && high == range.high
+                (Bounds::Temperature, Unavailable::Temperature { low, high, source, .. })
+                | (Bounds::Composition, Unavailable::Composition { low, high, source, .. })
+                | (Bounds::Grade, Unavailable::Grade { low, high, source, .. })
+                | (Bounds::Pressure, Unavailable::Pressure { low, high, source, .. }) => {
+                    low == range.low && high == range.high && source == range.source
                 }
                 _ => false,
             };
