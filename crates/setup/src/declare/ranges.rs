@@ -85,12 +85,8 @@ const MONATOMIC: f64 = 1.67;
 pub const ADIABATIC_INDEX: Bounds =
     Bounds::above(1.0, MONATOMIC, "more than 1 and at most 5/3 (1.67)", "no ideal gas has another");
 /// Polytropic exponent.
-pub const POLYTROPIC: Bounds = Bounds::from(
-    1.0,
-    MONATOMIC,
-    "1 (isothermal) to 5/3 (adiabatic, monatomic)",
-    "no gas spring is outside",
-);
+pub const POLYTROPIC: Bounds =
+    Bounds::from(1.0, MONATOMIC, "1 (isothermal) to 5/3 (adiabatic, monatomic)", "no gas spring is outside");
 /// Poisson's ratio of a solid.
 pub const POISSON: Bounds =
     Bounds::from(0.0, 0.5, "0 to 0.5", "no isotropic plastic, glass or metal is outside");

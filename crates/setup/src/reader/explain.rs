@@ -45,15 +45,18 @@ pub(super) fn broken(
     let at = at.filter(|at| body.get(at.clone()).is_some_and(|part| !part.is_empty()));
     let at = at.unwrap_or(0..body.len());
     let message = format!("`{}`: {}", shown(body), fault.as_deref().unwrap_or(word));
-    let mend = mended.filter(|mended| reads(mended)).map(|mended| {
-        // A line that is taken away goes with its line end, unless a comment follows.
-        if mended.is_empty() && after.trim().is_empty() {
-            (title, String::new())
-        } else {
-            let mended = mended.replace('\n', newline(text));
-            (title, format!("{before}{mended}{}", after.replace(is_control, "")))
-        }
-    });
+    let mend = mended.filter(|mended| reads(mended) && !has_lone_return(&text[statement.whole.clone()])).map(
+        |mended| {
+            // A line that is taken away goes with its line end, unless a comment follows.
+            if mended.is_empty() && after.trim().is_empty() {
+                (title, String::new())
+            } else {
+                // A line end that the mend puts in is that of the file; those of a longer statement stay as they are.
+                let mended = if body.contains('\n') { mended } else { mended.replace('\n', newline(text)) };
+                (title, format!("{before}{mended}{}", after.replace(is_control, "")))
+            }
+        },
+    );
     Explained {
         span: statement.body.start + at.start..statement.body.start + at.end,
         message,
@@ -79,7 +82,12 @@ pub(super) fn further(first: &Slip, last: &Slip, count: usize) -> Slip {
 /// Whether a rewriting is read without a slip: a statement, several, a comment, or nothing.
 fn reads(mended: &str) -> bool {
     let line = |line: &str| line.is_empty() || line.starts_with('#') || is_statement(line);
-    is_statement(mended) || mended.split('\n').map(str::trim).all(line)
+    is_statement(mended) || mended.split('\n').map(|line| line.trim_matches([' ', '\t', '\r'])).all(line)
+}
+
+/// A carriage return that ends no line as TOML has it.
+fn has_lone_return(text: &str) -> bool {
+    text.replace("\r\n", "").contains('\r')
 }
 
 fn is_control(c: char) -> bool {
@@ -187,9 +195,7 @@ pub(super) fn homeless(first: &Statement, last: &Statement, count: usize) -> Sli
         kind: SlipKind::TableUnknown,
         span: first.body.start..last.body.end,
         statement: first.whole.start..last.whole.end,
-        message: format!(
-            "{keys} here stand below a header that cannot be read, so it is open what they are about"
-        ),
+        message: format!("{keys} below a header that cannot be used, so it is open what is meant"),
         related: None,
         mend: None,
         lost_key: None,

@@ -179,13 +179,17 @@ impl Merge {
         Ok(())
     }
 
-    /// Whether a table holds a key; a dotted key is followed.
-    pub fn has(&self, table: NodeId, path: &[String]) -> bool {
+    /// Whether a key would clash with what a table holds.
+    pub fn clashes(&self, table: NodeId, path: &[String]) -> bool {
         let mut node = table;
         for (index, name) in path.iter().enumerate() {
             match self.slot(node, name).map(|slot| &slot.held) {
                 None => return false,
-                Some(Held::Table(inner)) if index + 1 < path.len() => node = *inner,
+                Some(Held::Table(inner))
+                    if index + 1 < path.len() && self.nodes[*inner].made == Made::DottedKey =>
+                {
+                    node = *inner;
+                }
                 Some(_) => return true,
             }
         }

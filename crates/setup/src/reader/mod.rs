@@ -72,8 +72,8 @@ struct Reader<'a> {
     slips: Vec<Slip>,
     /// The first and the last slip that are not told, and how many.
     further: Option<(Slip, Slip, usize)>,
-    /// Where the key of a slip would stand after its mend.
-    mended_keys: Vec<(usize, NodeId, Vec<String>)>,
+    /// The keys that a slip's mend would add to which table.
+    mended_keys: Vec<(usize, NodeId, Vec<Vec<String>>)>,
     /// Paths of all `[[headers]]`.
     repeated: HashSet<Vec<String>>,
     /// Keys below a header that could not be read: first and last statement, and how many.
@@ -156,7 +156,7 @@ impl<'a> Reader<'a> {
     fn broken(&mut self, statement: &Statement, word: &str) {
         let mends = self.slips.len() < MOST_SLIPS;
         let explained = explain::broken(self.text, statement, word, mends, &self.repeated);
-        let Explained { span, message, key, header, mend } = explained;
+        let Explained { span, message, key, header, mut mend } = explained;
         let mut lost_key = None;
         if let Some(found) = header {
             self.settle_homeless();
@@ -164,14 +164,18 @@ impl<'a> Reader<'a> {
             if let Some((path, repeated)) = found {
                 self.current.path = names(&path);
                 let table = self.merge.header(&path, &statement.body, &statement.whole, repeated);
+                mend = mend.filter(|_| table.is_ok());
                 self.current.table = table.map_or_else(|clash| clash.table, Some);
                 lost_key = Some(self.current.path.clone());
             }
+        } else if self.current.table.is_none() {
+            // First the header above.
+            mend = None;
         } else if let Some(key) = key {
             lost_key = self.lost(&key);
-            if let (Some(table), Some(_)) = (self.current.table, &mend) {
-                self.mended_keys.push((self.slips.len(), table, key));
-            }
+        }
+        if let (Some(table), Some((_, mended))) = (self.current.table, &mend) {
+            self.mended_keys.push((self.slips.len(), table, keys_in(mended)));
         }
         self.tell(Slip {
             kind: SlipKind::Unreadable,
@@ -209,8 +213,10 @@ impl<'a> Reader<'a> {
     fn finish(mut self) -> Reading {
         self.settle_homeless();
         // A mend that would make a key twice is none.
-        for (slip, table, key) in &self.mended_keys {
-            if self.merge.has(*table, key) {
+        for (slip, table, keys) in &self.mended_keys {
+            let twice =
+                |(index, key): (usize, &Vec<String>)| keys[..index].iter().any(|before| clash(before, key));
+            if keys.iter().any(|key| self.merge.clashes(*table, key)) || keys.iter().enumerate().any(twice) {
                 self.slips[*slip].mend = None;
             }
         }
@@ -220,6 +226,23 @@ impl<'a> Reader<'a> {
         self.slips.sort_by_key(|slip| slip.span.start);
         Reading { root: self.merge.finish(), slips: self.slips }
     }
+}
+
+/// The keys of the statements in a mended line.
+fn keys_in(mended: &str) -> Vec<Vec<String>> {
+    let parsed = |line: &str| match parse(line.trim(), 0, &(0..0)) {
+        Ok(Parsed::Pair { path, .. }) => Some(names(&path)),
+        _ => None,
+    };
+    match parsed(mended) {
+        Some(key) => vec![key],
+        None => mended.lines().filter_map(parsed).collect(),
+    }
+}
+
+/// Of two keys one is the other or a table that the other stands in.
+fn clash(one: &[String], other: &[String]) -> bool {
+    one.starts_with(other) || other.starts_with(one)
 }
 
 fn names(path: &[Segment]) -> Vec<String> {

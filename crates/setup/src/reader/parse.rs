@@ -28,19 +28,24 @@ pub(super) struct Segment {
 /// Reads the statement `body`, which starts at `base` in the file and is all but the comment of the statement at
 /// `whole`. The error is the parser's own short word.
 pub(super) fn parse(body: &str, base: usize, whole: &Span) -> Result<Parsed, String> {
+    if body.starts_with('\u{feff}') {
+        return Err("a byte-order mark inside the file".to_owned());
+    }
     let document = Document::parse(body).map_err(|error| error.message().to_owned())?;
     let source = Source { body, base, whole };
     let mut path = Vec::new();
     let mut table: &dyn TableLike = document.as_table();
     loop {
-        let Some((key, item)) = table.iter().next() else {
-            return Err("no statement".to_owned());
+        let mut entries = table.iter();
+        let (Some((key, item)), None) = (entries.next(), entries.next()) else {
+            return Err("not one statement".to_owned());
         };
         let span = table.get_key_value(key).and_then(|(key, _)| key.span());
         path.push(Segment { name: key.to_owned(), span: source.span(span) });
         match item {
             Item::Value(value) => return Ok(Parsed::Pair { path, value: source.value(value) }),
             Item::Table(inner) if inner.is_implicit() => table = inner,
+            Item::Table(inner) if !inner.is_empty() => return Err("not one statement".to_owned()),
             Item::Table(inner) => {
                 return Ok(Parsed::Header { path, span: source.span(inner.span()), repeated: false });
             }

@@ -53,7 +53,7 @@ impl<'a> Statements<'a> {
         while at < statement.body.end {
             if starts_statement(line(self.text, at)) {
                 self.at = at;
-                let body = statement.body.start..self.text[..at].trim_end().len();
+                let body = statement.body.start..blank_free(self.text, at);
                 return Some(Statement { whole: statement.whole.start..at, body, ..*statement });
             }
             at = line_end(self.text, at);
@@ -68,8 +68,9 @@ impl<'a> Statements<'a> {
 
     fn note_line_end(&mut self, span: Span) {
         if self.text[span.clone()].starts_with('\r') && span.len() == 1 {
-            let start = self.lone_returns.as_ref().map_or(span.start, |known| known.start);
-            self.lone_returns = Some(start..span.end);
+            // After a cut the same stretch is looked at again.
+            let known = self.lone_returns.take().unwrap_or(span.clone());
+            self.lone_returns = Some(known.start.min(span.start)..known.end.max(span.end));
         }
     }
 }
@@ -82,6 +83,10 @@ impl Iterator for Statements<'_> {
         let mut line_start = offset;
         let mut scan = Scan::default();
         let window = &self.text[offset..self.limit()];
+        if window.starts_with('\u{feff}') {
+            // Inside the file a byte-order mark is no blank space, which the lexer takes it for.
+            scan.take(TokenKind::Atom, offset..offset + '\u{feff}'.len_utf8());
+        }
         for token in Source::new(window).lex() {
             let span = offset + token.span().start()..offset + token.span().end();
             let kind = token.kind();
@@ -104,7 +109,7 @@ impl Iterator for Statements<'_> {
             return if self.at < self.text.len() { self.next() } else { None };
         };
         // Quotes that nobody closes take the line ends along.
-        let body = start..start + self.text[start..scan.end].trim_end_matches([' ', '\t', '\r', '\n']).len();
+        let body = start..blank_free(self.text, scan.end);
         let end = line_end(self.text, body.end);
         self.budget = self.budget.saturating_sub(end - offset);
         self.at = end;
@@ -175,6 +180,11 @@ impl Scan {
             || ((self.braces == 0 || !self.wants_more)
                 && starts_statement(next.trim_start_matches([' ', '\t'])))
     }
+}
+
+/// The end of a text without the blank space there; only what TOML counts as blank.
+fn blank_free(text: &str, end: usize) -> usize {
+    text[..end].trim_end_matches([' ', '\t', '\r', '\n']).len()
 }
 
 /// Past the line end of the line that `at` stands in.

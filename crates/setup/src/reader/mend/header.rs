@@ -77,6 +77,9 @@ pub(super) fn look(body: &str, base: usize, repeated: &HashSet<Vec<String>>) -> 
 
 /// A header with what was written behind it: a key of its own on the next line, anything else as a comment.
 fn with_rest(header: &str, rest: &str) -> (&'static str, Option<String>) {
+    if rest.starts_with('[') {
+        return ("", None);
+    }
     let below = |line: String| format!("{header}\n{line}");
     if is_statement(rest) {
         return ("Put it on a line of its own", Some(below(rest.to_owned())));

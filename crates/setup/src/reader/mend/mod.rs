@@ -9,7 +9,7 @@ mod pieces;
 mod scalar;
 mod value;
 
-use super::parse::Segment;
+use super::parse::{Parsed, Segment, parse};
 use crate::finding::Span;
 use std::collections::HashSet;
 
@@ -32,9 +32,29 @@ pub(super) struct Mended {
 
 /// Looks through a statement that starts at `base`. `repeated`: paths of headers in double brackets.
 pub(super) fn look(body: &str, base: usize, repeated: &HashSet<Vec<String>>) -> Mended {
+    if let Some(rest) = body.strip_prefix('\u{feff}') {
+        return marked(rest, base + '\u{feff}'.len_utf8());
+    }
     header::look(body, base, repeated)
         .or_else(|| pair::look(body))
         .unwrap_or_else(|| pair::without_equals(body))
+}
+
+/// A byte-order mark inside the file, as when two files are joined, with the statement behind it.
+fn marked(rest: &str, base: usize) -> Mended {
+    let (key, header) = match parse(rest, base, &(0..0)) {
+        Ok(Parsed::Header { path, repeated, .. }) => (None, Some(Some((path, repeated)))),
+        Ok(Parsed::Pair { path, .. }) => (Some(path.into_iter().map(|part| part.name).collect()), None),
+        Err(_) => (None, rest.starts_with('[').then_some(None)),
+    };
+    Mended {
+        at: None,
+        fault: Some("a byte-order mark that no editor shows stands in front of it".to_owned()),
+        key,
+        header,
+        body: Some(rest.to_owned()),
+        title: "Take the byte-order mark away".to_owned(),
+    }
 }
 
 /// Looks through a statement that is too long or too deep to be rewritten: only for what it is about.

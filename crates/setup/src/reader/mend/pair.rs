@@ -43,6 +43,10 @@ fn two_on_a_line(body: &str, parts: &key::Parts) -> Option<Fault> {
 
 /// A statement without `=`.
 pub(super) fn without_equals(body: &str) -> Mended {
+    if body.trim().is_empty() {
+        let words = "a space of a kind that is none in this language stands alone on the line";
+        return mended(Some(Fault::mended(words, "Take it away", "")), None, None);
+    }
     if body.chars().all(|c| "]}),;".contains(c) || c.is_whitespace()) {
         let fault = Fault::mended("it closes nothing", "Take it away", "");
         return mended(Some(fault), None, None);
