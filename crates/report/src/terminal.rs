@@ -1,7 +1,7 @@
 //! Findings for a person at a terminal: each with the lines it is about.
 
 use crate::Checked;
-use crate::line::{one_line, word};
+use crate::line::{harmless, one_line, word};
 use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme, LabeledSpan, NamedSource, SourceCode};
 use setup::finding::{Finding, Severity, Span};
 use std::fmt;
@@ -22,7 +22,7 @@ pub fn findings(checked: &Checked, style: Style) -> String {
         .with_links(false)
         .with_width(style.width.max(40))
         .with_context_lines(1);
-    let source = NamedSource::new(one_line(checked.path), checked.text.to_owned());
+    let source = NamedSource::new(one_line(checked.path), harmless(checked.text));
     let mut out = String::new();
     for finding in &checked.analysis.findings {
         let shown = Shown { finding, source: &source, length: checked.text.len() };
