@@ -319,6 +319,10 @@ fn hostile_texts_are_read_in_bounded_time() {
         format!("a = [{} mm]", many("1, ", 330_000)),
         format!("a = {}", many("x ", 500_000)),
         format!("[{}a]", many("a.", 500_000)),
+        // A look to the end for every line, in a text that is mostly blank.
+        many("a = \\\"\"\"\n", 40_000) + &many("\n", 500_000),
+        many("a = \\\"\"\"\n", 40_000) + &many("# x\n", 200_000),
+        many("a = [\n\n", 1_000) + &many("\n", 500_000),
         many("\u{feff}", 300_000),
         many("\0\n", 400_000),
         many("a = 1\r", 160_000),
@@ -499,7 +503,7 @@ fn flatten_oracle(table: &dyn TableLike, path: &str, text: &str, out: &mut Vec<(
             }
             Item::ArrayOfTables(list) => {
                 for (i, inner) in list.iter().enumerate() {
-                    out.push((format!("{path}[{i}]"), text[inner.span().unwrap()].to_owned()));
+                    out.push((format!("{path}[{i}]"), text[inner.span().unwrap_or_default()].to_owned()));
                     flatten_oracle(inner, &format!("{path}[{i}]"), text, out);
                 }
             }

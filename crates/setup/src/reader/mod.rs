@@ -7,8 +7,12 @@
 //! where there is just one ([`mend`]).
 //!
 //! The language is TOML 1.0. What only later editions allow and what has one meaning all the same is read without a
-//! word: an inline table over several lines, a comma after its last value, the escapes `\e` and `\x41`, a time
-//! without seconds.
+//! word: an inline table over several lines (if the later ones are indented), a comma after its last value, the
+//! escapes `\e` and `\x41`, a time without seconds.
+//!
+//! What a slip takes with it: the value of a broken line; of a key given twice the second; of a header whose name is
+//! clear in spite of the slip nothing, its keys are in the tree and its path is told as lost so that nothing rests on
+//! them; of any other header all keys below it.
 
 mod explain;
 mod mend;

@@ -15,7 +15,7 @@ pub(super) struct Statement {
     pub whole: Span,
     /// Without indentation, trailing comment and line end.
     pub body: Span,
-    /// How deep brackets nest, or how many parts a dotted key has, whichever is worse against its own bound.
+    /// Brackets nest, or the parts of a dotted key follow one another, beyond what is read.
     pub too_deep: bool,
 }
 
@@ -79,8 +79,22 @@ impl Iterator for Statements<'_> {
     type Item = Statement;
 
     fn next(&mut self) -> Option<Statement> {
+        while self.at < self.text.len() {
+            let statement = self.scan();
+            if statement.is_some() {
+                return statement;
+            }
+        }
+        None
+    }
+}
+
+impl Statements<'_> {
+    /// The next statement as far as the limit reaches; none when there are but blank lines and comments.
+    fn scan(&mut self) -> Option<Statement> {
         let offset = self.at;
         let mut line_start = offset;
+        let mut seen = offset;
         let mut scan = Scan::default();
         let window = &self.text[offset..self.limit()];
         if window.starts_with('\u{feff}') {
@@ -90,6 +104,7 @@ impl Iterator for Statements<'_> {
         for token in Source::new(window).lex() {
             let span = offset + token.span().start()..offset + token.span().end();
             let kind = token.kind();
+            seen = span.end;
             if kind == TokenKind::Newline {
                 self.note_line_end(span.clone());
                 if scan.start.is_none() {
@@ -103,15 +118,14 @@ impl Iterator for Statements<'_> {
                 scan.take(kind, span);
             }
         }
+        self.budget = self.budget.saturating_sub(seen - offset);
         let Some(start) = scan.start else {
-            // Nothing but blank lines and comments: up to the end of what was looked at.
             self.at = offset + window.len();
-            return if self.at < self.text.len() { self.next() } else { None };
+            return None;
         };
         // Quotes that nobody closes take the line ends along.
         let body = start..blank_free(self.text, scan.end);
         let end = line_end(self.text, body.end);
-        self.budget = self.budget.saturating_sub(end - offset);
         self.at = end;
         Some(Statement { whole: line_start..end, body, too_deep: scan.too_deep })
     }
