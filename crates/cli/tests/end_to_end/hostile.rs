@@ -66,6 +66,21 @@ fn absurd_numbers_are_refused_and_not_computed() {
 }
 
 #[test]
+fn a_drive_of_next_to_nothing_is_judged_like_none() {
+    // From rounding noise up to a thousandth of gravity the slab falls as fast as at rest.
+    let there = folder("next-to-nothing");
+    for exponent in (-12..=-2).rev() {
+        let text = sample("one-slab").replace("13.0 g0 peak", &format!("1e{exponent} m/s² peak"));
+        let run = run_in(&there, &["check", "-"], text.as_bytes());
+        assert!(
+            run.out.contains("[interface-falls]") && run.out.contains("fails: 1 error"),
+            "1e{exponent}: {}",
+            run.out
+        );
+    }
+}
+
+#[test]
 fn texts_that_are_no_setup_are_found_wanting() {
     let there = folder("no-setup");
     let deep = "[".repeat(5_000);

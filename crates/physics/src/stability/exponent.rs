@@ -19,9 +19,9 @@ use nalgebra::DefaultAllocator;
 use nalgebra::allocator::Allocator;
 use num_complex::Complex64;
 
-/// An acceleration that is none, m/s²: it moves an exponent by k a/4ω at most, which is below 10⁻⁹ 1/s for waves of a
+/// An acceleration that is none, m/s²: it moves an exponent by k a/4ω at most, which is below 10⁻⁶ 1/s for waves of a
 /// millimetre at 50 Hz, and in Hill's determinant it drowns in rounding.
-const NO_DRIVE: f64 = 1e-10;
+const NO_DRIVE: f64 = 1e-7;
 /// A decaying zero counts as an interface mode when the determinant turns there over more than this fraction of
 /// the zero's modulus. Vorticity modes of a gas beside a liquid come out near ρ_gas/ρ_liquid.
 const INTERFACE_SHARE: f64 = 0.02;
