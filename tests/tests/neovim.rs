@@ -8,7 +8,9 @@ use std::process::{Command, Stdio};
 use std::time::Duration;
 use topheavy_tests::dialogue::{topheavy, until};
 
-const SCRIPT: &str = concat!(env!("CARGO_MANIFEST_DIR"), "/tests/clients/neovim.lua");
+/// What users install.
+const SET_UP: &str = concat!(env!("CARGO_MANIFEST_DIR"), "/../editors/neovim/topheavy.lua");
+const SCRIPT: &str = concat!(env!("CARGO_MANIFEST_DIR"), "/clients/neovim.lua");
 const SAMPLE: &str = include_str!("../../samples/one-slab.stack.toml");
 
 #[test]
@@ -54,11 +56,14 @@ fn neovim_shows_findings_makes_a_mend_and_a_change_and_the_stack_holds() {
 /// The exit code of Neovim, if it ended in time, and what it said.
 fn run_neovim(folder: &std::path::Path, file: &std::path::Path) -> (Option<i32>, String) {
     let said = folder.join("said");
+    let programs = topheavy().parent().unwrap().to_owned();
+    let path = std::env::var_os("PATH").unwrap_or_default();
+    let path = std::env::join_paths([programs].into_iter().chain(std::env::split_paths(&path))).unwrap();
     let mut neovim = Command::new("nvim")
-        .args(["--headless", "--clean", "-n"])
+        .args(["--headless", "--clean", "-n", "--cmd", &format!("luafile {SET_UP}")])
         .arg(file)
         .args(["-S", SCRIPT])
-        .env("TOPHEAVY_PROGRAM", topheavy())
+        .env("PATH", path)
         // It keeps its own files away from the user's.
         .env("HOME", folder)
         .env("XDG_CACHE_HOME", folder)

@@ -3,7 +3,7 @@
 //! `tower-lsp` runs every handler as a future of its own, so two edits may be applied in either order, and its
 //! queues are bounded on both sides, so a server and an editor can wait for each other. Here, instead:
 //!
-//! * Notifications about documents never reach a handler. [`Ordered`] hands them, in the order of the wire and
+//! * Notifications about documents never reach a handler. `Ordered` hands them, in the order of the wire and
 //!   without waiting, to the one writer of [`crate::documents`].
 //! * A request is looked at once every edit that was read before it has been applied.
 //! * No number of slow requests keeps a fast one, or the cancellation of a slow one, waiting.
@@ -11,7 +11,7 @@
 //!   that does not read.
 //! * The server ends when it is told to, when its input or output closes, or when the editor's process is gone,
 //!   whatever else is under way, with the exit code that the protocol asks for.
-//! * A message that cannot be made out is answered with an error and does not end the reading ([`incoming`]).
+//! * A message that cannot be made out is answered with an error and does not end the reading (`incoming`).
 //! * `"params": null` means no parameters; a request of unknown name is answered, whatever its name begins with.
 
 use crate::documents::{Documents, Message, World};

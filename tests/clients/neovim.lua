@@ -1,5 +1,6 @@
 -- Opens the file that the command line names, makes one mend and one change that the server offers, and writes it.
--- Says on standard output what it saw; `tests/tests/neovim.rs` reads that. Runs in Neovim 0.7 and later.
+-- Says on standard output what it saw; `tests/tests/neovim.rs` reads that. Runs in Neovim 0.7 and later, after
+-- `editors/neovim/topheavy.lua` has started the server.
 
 local LONG = 60000 -- ms; the first check on a busy machine
 
@@ -7,19 +8,13 @@ local function say(word, text)
   io.stdout:write(word .. ' ' .. text .. '\n')
 end
 
-local config = {
-  name = 'topheavy',
-  cmd = { vim.env.TOPHEAVY_PROGRAM, 'serve' },
-  root_dir = vim.fn.fnamemodify(vim.api.nvim_buf_get_name(0), ':h'),
-}
-
-local function start()
-  if vim.lsp.start then
-    return vim.lsp.start(config)
+-- The client that the set-up has started for this buffer.
+local function topheavy()
+  for _, client in pairs(vim.lsp.buf_get_clients(0)) do
+    if client.name == 'topheavy' then
+      return client
+    end
   end
-  local id = vim.lsp.start_client(config)
-  vim.lsp.buf_attach_client(0, id)
-  return id
 end
 
 local function rule(diagnostic)
@@ -75,7 +70,8 @@ local function apply(client, diagnostic, what, is_wanted)
 end
 
 local function work()
-  local client = vim.lsp.get_client_by_id(start())
+  wait('the server', topheavy)
+  local client = topheavy()
   wait('a misspelt key', function() return finding('key-not-known') end)
   for _, diagnostic in ipairs(vim.diagnostic.get(0)) do
     say('found', string.format('%s %s %d', diagnostic.source, rule(diagnostic), diagnostic.lnum + 1))
