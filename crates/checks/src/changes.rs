@@ -252,7 +252,7 @@ fn reached(after: &Analysis) -> String {
             "no-holding-drive" => "no drive holds it".to_owned(),
             "interface-falls" => "an interface falls".to_owned(),
             "waves-on-interface" => "waves rise".to_owned(),
-            rule => format!("`{rule}` remains"),
+            rule => format!("not judged yet, `{rule}` stands in the way"),
         };
     }
     let mut text = match after.verdict {

@@ -4,7 +4,7 @@ use std::io::Read;
 use std::path::{Path, PathBuf};
 
 /// Largest setup file that is read, bytes.
-pub const LARGEST: u64 = 1 << 20;
+const LARGEST: u64 = setup::LARGEST_FILE as u64;
 const SETUP: &str = ".stack.toml";
 
 /// A file that was asked for.
@@ -80,18 +80,15 @@ pub fn meant(paths: &[String]) -> Result<Vec<String>, String> {
             files.extend(below(Path::new(path))?);
         }
     }
-    // The same file named twice is judged once.
+    // The same file named twice, in whatever spelling, is judged once.
     let mut seen = std::collections::HashSet::new();
-    files.retain(|file| seen.insert(file.clone()));
+    files.retain(|file| seen.insert(Path::new(file).canonicalize().unwrap_or_else(|_| PathBuf::from(file))));
     Ok(files)
 }
 
 fn below(folder: &Path) -> Result<Vec<String>, String> {
     let mut found = Vec::new();
-    let walk = ignore::WalkBuilder::new(folder)
-        .sort_by_file_path(|a, b| a.cmp(b))
-        .require_git(false)
-        .build();
+    let walk = ignore::WalkBuilder::new(folder).sort_by_file_path(|a, b| a.cmp(b)).require_git(false).build();
     for entry in walk {
         let entry = entry.map_err(|error| error.to_string())?;
         let is_setup = entry.file_name().to_str().is_some_and(|name| name.ends_with(SETUP));
@@ -105,7 +102,8 @@ fn below(folder: &Path) -> Result<Vec<String>, String> {
 /// The nearest folder at or above the current one with `topheavy.toml` or `.git`, else the current one.
 fn project_root() -> PathBuf {
     let here = std::env::current_dir().unwrap_or_else(|_| PathBuf::from("."));
-    let root = here.ancestors().find(|folder| folder.join("topheavy.toml").exists() || folder.join(".git").exists());
+    let root =
+        here.ancestors().find(|folder| folder.join("topheavy.toml").exists() || folder.join(".git").exists());
     match root {
         Some(root) if root != here => root.to_path_buf(),
         _ => PathBuf::from("."),

@@ -92,7 +92,12 @@ pub fn response(derived: &Derived, frequencies: &[f64]) -> Result<ChainAnswer, N
 
 fn point(stack: &Stack, derived: &Derived, drive: Drive, chain: &Chain) -> ChainPoint {
     let name = |layers: &std::ops::Range<usize>| {
-        derived.slabs.iter().find(|slab| slab.range == *layers).map(|slab| slab.name.clone()).unwrap_or_default()
+        derived
+            .slabs
+            .iter()
+            .find(|slab| slab.range == *layers)
+            .map(|slab| slab.name.clone())
+            .unwrap_or_default()
     };
     ChainPoint {
         frequency: drive.frequency,

@@ -13,7 +13,11 @@ pub fn run(options: &Chain) -> Outcome {
             Ok((low, high)) if low.value > 0.0 && high.value > low.value => {
                 spaced(low.value, high.value, options.points as usize)
             }
-            Ok(_) => return output::refuse(&format!("--sweep \"{text}\": the first frequency must be above 0 and below the second")),
+            Ok(_) => {
+                return output::refuse(&format!(
+                    "--sweep \"{text}\": the first frequency must be above 0 and below the second"
+                ));
+            }
             Err(refusal) => return output::refuse(&format!("--sweep \"{text}\": {}", refusal.message)),
         },
     };
@@ -28,7 +32,9 @@ pub fn run(options: &Chain) -> Outcome {
             Format::Text => output::say(&report::chain::table(&answer)),
         },
         Err(NoChain::StackUnresolved) => super::unresolved(&options.file, &text, &analysis),
-        Err(NoChain::NoDrive) => output::refuse(&format!("{}: no drive is written, so nothing moves", options.file)),
+        Err(NoChain::NoDrive) => {
+            output::refuse(&format!("{}: no drive is written, so nothing moves", options.file))
+        }
         Err(NoChain::Failure(failure)) => output::refuse(&format!("{}: {failure}", options.file)),
     }
 }
@@ -37,7 +43,5 @@ pub fn run(options: &Chain) -> Outcome {
 fn spaced(low: f64, high: f64, points: usize) -> Vec<f64> {
     let ratio = high / low;
     let last = points - 1;
-    (0..points)
-        .map(|i| if i == last { high } else { low * ratio.powf(i as f64 / last as f64) })
-        .collect()
+    (0..points).map(|i| if i == last { high } else { low * ratio.powf(i as f64 / last as f64) }).collect()
 }

@@ -56,15 +56,21 @@ fn wavenumbers(options: &Curve) -> Result<Vec<f64>, String> {
         (None, Some(text)) => ("--wavelength", text, Kind::Length),
         (None, None) => return Err("give --wavenumber or --wavelength".to_owned()),
     };
-    let list =
-        quantity::parse_list(text, kind).map_err(|refusal| format!("{name} \"{text}\": {}", refusal.message))?;
+    let list = quantity::parse_list(text, kind)
+        .map_err(|refusal| format!("{name} \"{text}\": {}", refusal.message))?;
     if list.len() > MOST {
         return Err(format!("{name}: {} values, at most {MOST} are taken", list.len()));
     }
     let in_reach = |value: f64| (1e-3..=1e8).contains(&value);
     list.iter()
         .map(|quantity| if kind == Kind::Length { TAU / quantity.value } else { quantity.value })
-        .map(|k| if in_reach(k) { Ok(k) } else { Err(format!("{name}: {k} 1/m lies outside 0.001 1/m to 1e8 1/m")) })
+        .map(|k| {
+            if in_reach(k) {
+                Ok(k)
+            } else {
+                Err(format!("{name}: {k} 1/m lies outside 0.001 1/m to 1e8 1/m"))
+            }
+        })
         .collect()
 }
 

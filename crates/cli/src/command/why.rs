@@ -11,7 +11,12 @@ pub fn run(options: &Why) -> Outcome {
         let list: String = rules
             .iter()
             .map(|rule| {
-                format!("{:width$}  {:11}  {}\n", rule.id, report::line::word(rule.severity), rule.statement())
+                format!(
+                    "{:width$}  {:11}  {}\n",
+                    rule.id,
+                    report::line::word(rule.severity),
+                    rule.statement()
+                )
             })
             .collect();
         return output::say(&list);
