@@ -1,5 +1,6 @@
 //! Helpers that the integration tests share.
 
+pub mod collocation;
 pub mod dialogue;
 pub mod draw;
 pub mod galerkin;

@@ -43,7 +43,9 @@ fn file(checked: &Checked, encoding: Encoding) -> Value {
         checked.analysis.findings.iter().map(|finding| self::finding(finding, &at)).collect();
     object.insert("findings".to_owned(), Value::Array(findings));
     if let Some(derived) = &checked.analysis.derived {
-        object.insert("results".to_owned(), results(derived));
+        let setup = &checked.analysis.understanding.setup;
+        let at_rest = setup.drive.is_none() && !setup.drive_unreadable;
+        object.insert("results".to_owned(), results(derived, at_rest));
     }
     Value::Object(object)
 }
@@ -96,9 +98,9 @@ fn fix(fix: &Fix, at: &Positions) -> Value {
     })
 }
 
-fn results(derived: &Derived) -> Value {
+fn results(derived: &Derived, at_rest: bool) -> Value {
     let mut object = Map::new();
-    object.insert("slabs".to_owned(), derived.slabs.iter().map(slab).collect());
+    object.insert("slabs".to_owned(), derived.slabs.iter().map(|one| slab(one, at_rest)).collect());
     object.insert("cushions".to_owned(), derived.cushions.iter().map(cushion).collect());
     object.insert(
         "natural_frequencies_hz".to_owned(),
@@ -131,7 +133,7 @@ fn results(derived: &Derived) -> Value {
     Value::Object(object)
 }
 
-fn slab(slab: &Slab) -> Value {
+fn slab(slab: &Slab, at_rest: bool) -> Value {
     let mut object = Map::new();
     object.insert("name".to_owned(), json!(slab.name));
     object.insert("layers".to_owned(), json!(slab.layers));
@@ -140,6 +142,9 @@ fn slab(slab: &Slab) -> Value {
         put(&mut object, "acceleration_peak_m_per_s2", motion.acceleration);
         put(&mut object, "amplification", motion.amplification);
         put(&mut object, "phase_rad", motion.phase);
+    } else if at_rest {
+        // Without a drive nothing moves; an amplification does not exist.
+        put(&mut object, "acceleration_peak_m_per_s2", 0.0);
     }
     if let Some(stability) = &slab.stability {
         put(&mut object, "growth_rate_per_s", stability.growth_rate);

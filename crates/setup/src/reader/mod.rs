@@ -1,7 +1,7 @@
 //! The first stage: a text to a tree of keys and values with their places. It never fails; what cannot be read is
 //! told statement by statement, and everything else is there.
 //!
-//! The text is cut into statements ([`statements`]), each is parsed alone ([`parse`]) and put where it belongs
+//! The text is cut into statements ([`statements`]), each is parsed alone ([`mod@parse`]) and put where it belongs
 //! ([`merge`]). So one broken line costs one line, and the cost grows with the length of the text and no faster. What
 //! a broken statement was meant to be is worked out from its parts ([`explain`]), with the rewriting that mends it
 //! where there is just one ([`mend`]).
