@@ -1,6 +1,5 @@
 //! Helpers that the integration tests share.
 
-pub mod collocation;
 pub mod dialogue;
 pub mod draw;
 pub mod galerkin;

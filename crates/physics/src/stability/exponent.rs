@@ -27,6 +27,8 @@ const NO_DRIVE: f64 = 1e-7;
 const INTERFACE_SHARE: f64 = 0.02;
 /// Harmonics are kept until the neglected ones change a pivot by less than this.
 pub(super) const TRUNCATION: f64 = 1e-11;
+/// What one exponent may cost.
+const MOST_BLOCKS: u64 = 20_000_000;
 /// Im s closer than this (times ω) to 0 or ω/2 is real: harmonic or subharmonic.
 const REAL: f64 = 1e-7;
 /// Within this (times ω) of those lines an exponent is looked for on the line itself.
@@ -81,7 +83,8 @@ where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
     let stiffness = Stiffness::new(layered, k, size);
-    let hill = Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION, Meter::default());
+    let hill =
+        Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION, Meter::up_to(MOST_BLOCKS));
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
     let mut line = Line::new(&hill, 0.0, &hints);
     leading_of(&hill, &hints, &mut line, forcing.acceleration, k, cancel)

@@ -24,25 +24,28 @@ use std::rc::Rc;
 /// Harmonics beyond which the truncation cannot matter at the accuracy claimed.
 const MOST_HARMONICS: usize = 60;
 
-/// Blocks M(Λ) that one question may cost: about ten seconds. Beyond it lie thousands of stirring modes (thin liquids
-/// in wide cells far above their first waves), 100 standard gravities at a fifth of a hertz, films of micrometres;
-/// they end as a typed outcome.
-const MOST_BLOCKS: u64 = 20_000_000;
-
-/// Counts the work that one question costs.
-#[derive(Debug, Clone, Default)]
-pub(super) struct Meter(Rc<Cell<u64>>);
+/// Counts the work that one question costs, in blocks M(Λ), and bounds it.
+#[derive(Debug, Clone)]
+pub(super) struct Meter {
+    spent: Rc<Cell<u64>>,
+    most: u64,
+}
 
 impl Meter {
+    /// A question that may cost so many blocks (a million takes about half a second).
+    pub fn up_to(most: u64) -> Meter {
+        Meter { spent: Rc::default(), most }
+    }
+
     fn charge(&self, blocks: usize) {
-        self.0.set(self.0.get() + blocks as u64);
+        self.spent.set(self.spent.get() + blocks as u64);
     }
 
     /// # Errors
     /// [`Failure::TooMuchWork`] once the question has cost too much.
     pub fn check(&self) -> Result<(), Failure> {
-        let blocks = self.0.get();
-        if blocks > MOST_BLOCKS { Err(Failure::TooMuchWork { blocks }) } else { Ok(()) }
+        let blocks = self.spent.get();
+        if blocks > self.most { Err(Failure::TooMuchWork { blocks }) } else { Ok(()) }
     }
 }
 

@@ -19,6 +19,8 @@ use num_complex::Complex64;
 
 /// Relative step of the search for combination resonances.
 const STEP: f64 = 1.03;
+/// What one wavenumber may cost: nearly inviscid fluids want ten times what a laboratory's do.
+const MOST_BLOCKS: u64 = 200_000_000;
 /// Relative accuracy of a marginal acceleration.
 const ACCURACY: f64 = 1e-10;
 
@@ -60,7 +62,8 @@ fn all<D: Size>(
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    let hill = Hill::new(Stiffness::new(layered, k, size), omega, up_to, TRUNCATION, Meter::default());
+    let hill =
+        Hill::new(Stiffness::new(layered, k, size), omega, up_to, TRUNCATION, Meter::up_to(MOST_BLOCKS));
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
     let mut line = Line::new(&hill, 0.0, &hints);
     let mut neutral = Neutral {

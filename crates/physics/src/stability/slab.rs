@@ -35,6 +35,9 @@ const STEP: f64 = 1.05;
 const WIDE_STEP: f64 = 1.2;
 /// Modes whose decay is computed when nothing grows: so many with an exponent estimated closest to the axis.
 const CLOSEST: usize = 8;
+/// What a slab may cost. Beyond it lie thousands of stirring modes (thin liquids in wide cells far above their first
+/// waves), 100 standard gravities at a fifth of a hertz, films of micrometres; they end as a typed outcome.
+const MOST_BLOCKS: u64 = 20_000_000;
 /// The search ends at this multiple of the set acceleration …
 const BEYOND_SET: f64 = 3.0;
 /// … or of the averaged estimate of the hold limit …
@@ -293,7 +296,7 @@ where
             up_to,
             wavenumbers_up_to: first.wavenumber,
             covered: -1.0,
-            meter: Meter::default(),
+            meter: Meter::up_to(MOST_BLOCKS),
             probes: Vec::new(),
         };
         // The lowest mode is always there, so that something rings down even where nothing can stir.
