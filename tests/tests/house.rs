@@ -193,6 +193,7 @@ const NAMES: &[&str] = &[
     "not-converged",
     "not-looked-at",
     "open-value-unsolved",
+    "path-leaves-root",
     "peak-rms-slip",
     "pinned-line-slides",
     "pressure-reference-unsaid",

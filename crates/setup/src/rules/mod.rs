@@ -11,6 +11,7 @@ pub(crate) mod name_given_twice;
 pub(crate) mod name_not_found;
 pub(crate) mod not_looked_at;
 pub(crate) mod open_value_unsolved;
+pub(crate) mod path_leaves_root;
 pub(crate) mod peak_rms_slip;
 pub(crate) mod pressure_reference_unsaid;
 pub(crate) mod tolerance_meaning_unsaid;
@@ -56,6 +57,7 @@ pub const RULES: &[RuleInfo] = &[
         include_str!("tolerance_meaning_unsaid.rs"),
     ),
     RuleInfo::new("file-not-readable", Severity::Error, include_str!("file_not_readable.rs")),
+    RuleInfo::new("path-leaves-root", Severity::Error, include_str!("path_leaves_root.rs")),
     RuleInfo::new("open-value-unsolved", Severity::Error, include_str!("open_value_unsolved.rs")),
     RuleInfo::new("not-looked-at", Severity::Information, include_str!("not_looked_at.rs")),
 ];

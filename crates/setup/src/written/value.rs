@@ -244,7 +244,15 @@ impl Reader<'_, '_> {
 
     fn text<'v>(&mut self, value: &'v Value) -> Option<&'v Text> {
         match value {
-            Value::Text(text) => Some(text),
+            Value::Text(text) => {
+                let is_path = rules::path_leaves_root::PATH_KEYS.contains(&self.key.name);
+                if is_path && rules::path_leaves_root::leaves(&text.value) {
+                    let finding =
+                        rules::path_leaves_root::finding(self.place, text.span.clone(), &text.value);
+                    self.walk.document.findings.push(finding);
+                }
+                Some(text)
+            }
             _ => self.wrong(value),
         }
     }
