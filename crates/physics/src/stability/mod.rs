@@ -10,6 +10,7 @@ pub mod layered;
 mod modes;
 mod neutral;
 mod screen;
+mod side_walls;
 mod slab;
 mod stiffness;
 mod unforced;
@@ -19,6 +20,7 @@ pub use failure::Failure;
 pub use from_stack::layered;
 pub use modes::{CellMode, cell_modes};
 pub use neutral::{Neutral, neutral};
+pub use side_walls::{SideWalls, WallAction, Walls};
 pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab};
 
 /// Runs an expression with the number of interfaces as a constant where it is small, so that the inner loops work
