@@ -25,10 +25,13 @@ fn assert_close(a: Complex64, b: Complex64, tolerance: f64, what: &str) {
     assert!((a - b).norm() <= tolerance * b.norm(), "{what}: {a} against {b}");
 }
 
+/// Real and imaginary part.
+type Parts = (f64, f64);
+
 /// |z²|, its argument over π, g of plates, g of the round wall: mpmath 1.3 with 60 digits, from tanh and the Bessel
 /// functions I₀ and I₁ as they stand in the module's equations.
 #[rustfmt::skip]
-const FRICTION: [(f64, f64, (f64, f64), (f64, f64)); 33] = [
+const FRICTION: [(f64, f64, Parts, Parts); 33] = [
     (1e-16, 0.0, (3.0, 0.0), (8.0, 0.0)),
     (1e-16, 0.5, (3.0, 2.0e-17), (8.0, 3.33333333333333e-17)),
     (1e-16, 0.9, (3.0, 6.18033988749895e-18), (8.0, 1.03005664791649e-17)),
