@@ -7,3 +7,4 @@ pub mod onset;
 pub mod questions;
 pub mod references;
 pub mod stacks;
+pub mod tongues;

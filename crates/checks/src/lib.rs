@@ -4,6 +4,7 @@
 //! A rule reads derived results and never calls a solver; only `derived` does, through the caches of [`Engine`].
 
 mod analysis;
+mod cache;
 mod changes;
 pub mod derived;
 mod engine;
@@ -12,8 +13,9 @@ mod rules;
 mod words;
 
 pub use analysis::{Analysis, Verdict, analyse};
+pub use cache::{Bounds, Usage};
 pub use changes::{changes, offer};
 pub use derived::Derived;
-pub use engine::Engine;
+pub use engine::{Engine, SLABS};
 pub use hover::{HoverText, hover};
 pub use rules::{RULES, Rule, all_rules, why};
