@@ -18,9 +18,12 @@
 //! line is accepted only when F at its middle agrees with the mean of its ends to a fraction of |F|. The total must
 //! come out as a whole number and is refused otherwise.
 
+use super::exponent::TRUNCATION;
 use super::failure::Failure;
-use super::hill::{Harmonics, Hill};
-use super::stiffness::Size;
+use super::hill::{Harmonics, Hill, Meter};
+use super::layered::{Forcing, Layered};
+use super::stiffness::{Size, Stiffness};
+use super::unforced;
 use nalgebra::DefaultAllocator;
 use nalgebra::allocator::Allocator;
 use num_complex::Complex64;
@@ -29,6 +32,8 @@ use num_complex::Complex64;
 const COARSE: usize = 12;
 /// A piece is accepted when the middle departs from the mean of the ends by less than this fraction of |F|.
 const STRAIGHT: f64 = 0.3;
+/// What one count may cost.
+const MOST_BLOCKS: u64 = 20_000_000;
 /// Deepest bisection of a piece.
 const DEEPEST: u32 = 48;
 
@@ -50,10 +55,6 @@ pub(super) struct Count {
     pub right: usize,
     /// Local minima of |F| along the line, (y, |F|), smallest first: where exponents are near.
     pub near: Vec<(f64, f64)>,
-    /// Estimated distance of the nearest exponent from the line, 1/s: |F| over its slope along the line.
-    pub distance: f64,
-    /// F on Im s = 0 and on Im s = ω/2, real.
-    pub ends: [f64; 2],
 }
 
 impl<D: Size> Line<D>
@@ -123,12 +124,7 @@ where
                 evaluations: values.len(),
             });
         }
-        let ends = [values[0].re, values[values.len() - 1].re];
-        let near = self.minima(&values);
-        let distance =
-            near.iter().map(|&(i, size)| size / self.slope(&values, i)).fold(f64::INFINITY, f64::min);
-        let near = near.into_iter().map(|(i, size)| (self.samples[i].0, size)).collect();
-        Ok(Count { right: right.round() as usize, near, distance, ends })
+        Ok(Count { right: right.round() as usize, near: self.minima(&values) })
     }
 
     /// Whether the piece from i to i + 1 is so flat already that no sample inside can matter: judged with the
@@ -146,24 +142,34 @@ where
             && (left || right)
     }
 
-    /// |dF/dy| at a sample, from its neighbours.
-    fn slope(&self, values: &[Complex64], i: usize) -> f64 {
-        let (before, after) = (i.saturating_sub(1), (i + 1).min(values.len() - 1));
-        let rise = (values[after] - values[before]).norm() / (self.samples[after].0 - self.samples[before].0);
-        rise.max(f64::MIN_POSITIVE)
-    }
-
-    /// Local minima of |F|, (index, |F|), smallest first.
-    fn minima(&self, values: &[Complex64]) -> Vec<(usize, f64)> {
+    /// Local minima of |F|, (y, |F|), smallest first.
+    fn minima(&self, values: &[Complex64]) -> Vec<(f64, f64)> {
         let n = values.len();
         let size = |i: usize| values[i].norm();
-        let mut minima: Vec<(usize, f64)> = (0..n)
+        let mut minima: Vec<(f64, f64)> = (0..n)
             .filter(|&i| (i == 0 || size(i) <= size(i - 1)) && (i + 1 == n || size(i) < size(i + 1)))
-            .map(|i| (i, size(i)))
+            .map(|i| (self.samples[i].0, size(i)))
             .collect();
         minima.sort_by(|a, b| a.1.total_cmp(&b.1));
         minima
     }
+}
+
+/// The number of growing Floquet exponents of the slab at one wavenumber (1/m), by counting along the axis: what
+/// the loci (`locus`) are held to.
+///
+/// # Errors
+/// [`Failure`], as [`super::growth`].
+pub fn growing_exponents(layered: &Layered, forcing: &Forcing, wavenumber: f64) -> Result<usize, Failure> {
+    layered.check()?;
+    forcing.check()?;
+    super::with_size!(layered, size => {
+        let stiffness = Stiffness::new(layered, wavenumber, size);
+        let meter = Meter::up_to(MOST_BLOCKS);
+        let hill = Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION, meter);
+        let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(wavenumber));
+        Ok(Line::new(&hill, 0.0, &hints).count(&hill, forcing.acceleration, wavenumber)?.right)
+    })
 }
 
 /// Whether three samples of F lie nearly on a line that stays away from zero.

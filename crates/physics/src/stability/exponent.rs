@@ -13,6 +13,7 @@ use super::count::{Line, fold};
 use super::failure::Failure;
 use super::hill::{Hill, Meter, Reference, muller};
 use super::layered::{Forcing, Layered, Response};
+use super::locus::{Locus, locus};
 use super::stiffness::{Size, Stiffness};
 use super::unforced;
 use nalgebra::DefaultAllocator;
@@ -82,19 +83,34 @@ fn leading<D: Size>(
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    let stiffness = Stiffness::new(layered, k, size);
-    let hill =
-        Hill::new(stiffness, forcing.omega, forcing.acceleration, TRUNCATION, Meter::up_to(MOST_BLOCKS));
+    if forcing.acceleration <= NO_DRIVE {
+        let hill = Hill::new(
+            Stiffness::new(layered, k, size),
+            forcing.omega,
+            0.0,
+            TRUNCATION,
+            Meter::up_to(MOST_BLOCKS),
+        );
+        let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
+        return without_drive(&hill, &hints, k);
+    }
+    let hill = Hill::new(
+        Stiffness::new(layered, k, size),
+        forcing.omega,
+        forcing.acceleration,
+        TRUNCATION,
+        Meter::up_to(MOST_BLOCKS),
+    );
+    let locus = locus(&hill, forcing.acceleration, k)?;
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
-    let mut line = Line::new(&hill, 0.0, &hints);
-    leading_of(&hill, &hints, &mut line, forcing.acceleration, k, cancel)
+    leading_of(&hill, &hints, &locus, forcing.acceleration, k, cancel)
 }
 
 /// The same with everything prepared, for callers that ask for many accelerations.
 pub(super) fn leading_of<D: Size>(
     hill: &Hill<D>,
     hints: &[Complex64],
-    line: &mut Line<D>,
+    locus: &Locus,
     a: f64,
     k: f64,
     cancel: &dyn Fn() -> bool,
@@ -109,21 +125,22 @@ where
         return without_drive(hill, hints, k);
     }
     let omega = hill.omega;
-    let count = line.count(hill, a, k)?;
+    let growing = locus.growing(a);
     let references = [hill.reference(false), hill.reference(true)];
     let mut search = Search { hill, a, references: &references, found: Vec::new() };
-    let best = if count.right > 0 {
-        let mut starts: Vec<Complex64> =
-            count.near.iter().take(6).map(|&(y, _)| Complex64::new(0.0, y)).collect();
+    let mut starts = locus.exponents_near(a);
+    let best = if growing > 0 {
+        // The growing ones first, then whatever is near the axis.
+        starts.sort_by(|x, y| y.re.total_cmp(&x.re));
+        starts.truncate(8);
         starts.extend(hints.iter().map(|hint| Complex64::new(hint.re, fold(hint.im, omega))));
-        match search.all_growing(&starts, count.right, cancel)? {
+        match search.all_growing(&starts, growing, cancel)? {
             Some(exponent) => Some(exponent),
             None => Some(search.bracketed(hints, k, cancel)?),
         }
     } else {
-        let depth = hints.len() + 1;
-        let starts: Vec<f64> = count.near.iter().take(depth).map(|&(y, _)| y).collect();
-        search.least_damped(&starts)
+        starts.truncate(2 * (hints.len() + 1));
+        search.least_damped_as_estimated(&starts).or_else(|| search.least_damped(&starts))
     };
     let Some(exponent) = best else {
         return Err(Failure::ExponentLost {
@@ -137,7 +154,7 @@ where
         rate: exponent.re,
         frequency: exponent.im,
         response: class(exponent.im, omega),
-        unstable: count.right,
+        unstable: growing,
         interface: liveliest(hill, exponent, a),
         residual: search.residual(exponent),
         harmonics: hill.reach,
@@ -321,6 +338,10 @@ where
         let rough = Complex64::new(rough.re, fold(rough.im, omega));
         let root = muller(rough, |s| self.full(s, self.is_upper(rough)), 30, 1e-13)?;
         let root = self.on_its_line(Complex64::new(root.re, fold(root.im, omega)));
+        // Where fluids are equal their interface has a neutral exponent that means nothing.
+        if self.hill.axis > 0.0 && root.norm() < 10.0 * self.hill.axis {
+            return None;
+        }
         let close = |known: &Complex64| (known - root).norm() < 1e-7 * (root.norm() + 1e-3 * omega);
         // Far left of the axis F oscillates between the poles of vorticity modes: nothing there concerns us.
         if self.found.iter().any(close) || root.re < -2.0 * omega || !root.is_finite() {
@@ -361,8 +382,34 @@ where
         Ok(None)
     }
 
-    /// The least damped interface mode behind the points iy of the axis where |F| is smallest.
-    fn least_damped(&mut self, ys: &[f64]) -> Option<Complex64> {
+    /// The least damped interface mode when the estimates closest to the axis all lead to one.
+    fn least_damped_as_estimated(&self, starts: &[Complex64]) -> Option<Complex64> {
+        let omega = self.hill.omega;
+        let mut best: Option<Complex64> = None;
+        // The closest to the axis that could not be confirmed.
+        let mut doubtful = f64::INFINITY;
+        for start in starts.iter().take(4) {
+            // A later estimate, already further from the axis, cannot win.
+            if best.is_some_and(|known| start.re.abs() > 2.0 * known.re.abs()) {
+                break;
+            }
+            let upper = self.is_upper(*start);
+            let confirmed = muller(*start, |s| self.full(s, upper), 16, 1e-12).and_then(|root| {
+                let root = self.on_its_line(Complex64::new(root.re, fold(root.im, omega)));
+                let decays = root.re <= 0.0 && root.re > -2.0 * omega;
+                (decays && self.residual(root) < 1e-4 && self.is_interface_mode(root)).then_some(root)
+            });
+            match confirmed {
+                Some(root) if best.is_none_or(|known| root.re > known.re) => best = Some(root),
+                Some(_) => {}
+                None => doubtful = doubtful.min(start.re.abs()),
+            }
+        }
+        best.filter(|root| root.re.abs() < doubtful)
+    }
+
+    /// The least damped interface mode, from estimates of the exponents.
+    fn least_damped(&mut self, starts: &[Complex64]) -> Option<Complex64> {
         let mut best: Option<Complex64> = None;
         let mut consider = |root: Complex64| {
             if best.is_none_or(|known| root.re > known.re) {
@@ -370,9 +417,9 @@ where
             }
         };
         // Every start several times: what is found is divided out, and the next exponent shows.
-        for _ in 0..1 + ys.len() {
-            for &y in ys {
-                if let Some(root) = self.next(Complex64::new(0.0, y))
+        for _ in 0..2 {
+            for &start in starts {
+                if let Some(root) = self.next(start)
                     && root.re <= 0.0
                     && self.is_interface_mode(root)
                 {
@@ -380,7 +427,7 @@ where
                 }
             }
         }
-        ys.iter().filter_map(|y| self.extrapolated(*y)).for_each(&mut consider);
+        starts.iter().filter_map(|start| self.extrapolated(start.im)).for_each(&mut consider);
         let omega = self.hill.omega;
         let limit = best.map_or(-2.0 * omega, |known| known.re);
         for im in [0.0, 0.5 * omega] {
@@ -447,7 +494,9 @@ where
         let upper = line > 0.0;
         let real = |x: Complex64| Complex64::new(self.full(Complex64::new(x.re, line), upper).re, 0.0);
         match muller(Complex64::new(root.re, 0.0), real, 30, 1e-13) {
-            Some(found) if found.im == 0.0 && (found.re - root.re).abs() < 2.0 * away => {
+            Some(found)
+                if found.im == 0.0 && (found.re - root.re).abs() < (2.0 * away).max(1e-4 * root.norm()) =>
+            {
                 Complex64::new(found.re, line)
             }
             _ => root,

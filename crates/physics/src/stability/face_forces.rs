@@ -20,7 +20,7 @@
 //! kH from 1e-4 to ∞ (tests compare with the Stokes and the inviscid limits and with a direct 4 × 4 solution).
 
 use super::layered::FluidLayer;
-use crate::complex::tanh;
+use crate::complex::{sqrt, tanh};
 use num_complex::Complex64;
 
 /// Face coefficients of a layer; `near` acts on a face by its own motion, `far` by that of the other face.
@@ -69,7 +69,7 @@ impl LayerAtWavenumber {
             return FaceForces::default();
         }
         let shift = lambda * (self.density / mu);
-        let q = (shift + k * k).sqrt();
+        let q = sqrt(shift + k * k);
         let sum = q + k;
         if self.half.is_infinite() {
             // Half space: t = 1 for both parts, Φ = 1/(q + k).
@@ -83,17 +83,22 @@ impl LayerAtWavenumber {
         }
         let (half, tk) = (self.half, self.tanh_k);
         let tq = tanh(q * half);
-        // tanh((q − k)H)/(q − k), by which the divided differences avoid cancellation.
         let delta = shift / sum;
         let x = delta * half;
-        let tanh_ratio = if x.norm_sqr() < 1e-8 { (1.0 - x * x / 3.0) * half } else { tanh(x) / delta };
-        let gap = 1.0 - tq * tk;
-        let even = ((tq + k * gap * tanh_ratio) / sum).inv();
+        // k (1 − tq tk) tanh((q − k)H)/(q − k), by which the divided differences avoid cancellation; by the addition
+        // theorem that is k (tq − tk)/(q − k) where the difference keeps its digits.
+        let shared = if x.norm_sqr() > 0.01 {
+            (tq - tk) * k / delta
+        } else {
+            let ratio = if x.norm_sqr() < 1e-8 { (1.0 - x * x / 3.0) * half } else { tanh(x) / delta };
+            (1.0 - tq * tk) * ratio * k
+        };
+        let even = sum / (tq + shared);
         let product = tq * tk;
         let odd = if (q * half).norm_sqr() < 0.25 && k * half < 0.5 {
             thin_odd(q * half, k * half, half).inv()
         } else {
-            sum * product / (tk - k * gap * tanh_ratio)
+            sum * product / (tk - shared)
         };
         // b, a, n of the even and of the odd part.
         let (b_even, b_odd) = (mu * even, mu * odd);

@@ -24,6 +24,9 @@ use std::rc::Rc;
 /// Harmonics beyond which the truncation cannot matter at the accuracy claimed.
 const MOST_HARMONICS: usize = 60;
 
+/// Influence of the neglected harmonics on the loci before they are polished.
+const ROUGH: f64 = 1e-4;
+
 /// Counts the work that one question costs, in blocks M(Λ), and bounds it.
 #[derive(Debug, Clone)]
 pub(super) struct Meter {
@@ -37,8 +40,13 @@ impl Meter {
         Meter { spent: Rc::default(), most }
     }
 
-    fn charge(&self, blocks: usize) {
+    pub fn charge(&self, blocks: usize) {
         self.spent.set(self.spent.get() + blocks as u64);
+    }
+
+    /// Blocks evaluated so far.
+    pub fn spent(&self) -> u64 {
+        self.spent.get()
     }
 
     /// # Errors
@@ -77,6 +85,8 @@ where
     pub omega: f64,
     /// Harmonics kept on either side.
     pub reach: usize,
+    /// Harmonics that suffice to tell the loci of critical drives apart (`locus`).
+    pub rough: usize,
     /// Where the axis is taken, 1/s: 0, or a hair to the right of it where an interface has no static stiffness at
     /// all (equal fluids), whose neutral exponent at s = 0 would make F indefinite there.
     pub axis: f64,
@@ -97,17 +107,26 @@ where
             stiffness,
             omega,
             reach: MOST_HARMONICS,
+            rough: MOST_HARMONICS,
             axis: if idle { 1e-9 * omega } else { 0.0 },
             meter,
         };
+        // Every harmonic up to the fastest natural frequency may resonate, however little those before it answer.
+        let fastest = hill.stiffness.inviscid_squares().last().map_or(0.0, |square| square.max(0.0).sqrt());
+        let least = (fastest / omega).ceil() as usize + 1;
         let mut influence = 1.0;
         for n in 1..=MOST_HARMONICS {
             let block = hill.stiffness.at(Complex64::new(0.0, (n as f64 - 0.5) * omega));
             let weight = hill.stiffness.weight.amax();
             let strength = smallest_pivot(&block);
             let coupling = up_to / 2.0 * weight / strength.max(f64::MIN_POSITIVE);
-            influence *= (coupling * coupling).min(1.0);
-            if influence < accuracy {
+            if n + 1 >= least {
+                influence *= (coupling * coupling).min(1.0);
+            }
+            if influence < ROUGH && n >= least && hill.rough == MOST_HARMONICS {
+                hill.rough = n;
+            }
+            if influence < accuracy && n >= least {
                 hill.reach = n;
                 break;
             }
@@ -134,19 +153,14 @@ where
 
     /// F at prepared harmonics for the acceleration a.
     pub fn determinant(&self, harmonics: &Harmonics<D>, a: f64) -> Complex64 {
+        self.determinant_at(harmonics, Complex64::new(a * a, 0.0))
+    }
+
+    /// The same as a function of x = a², which may be complex.
+    pub fn determinant_at(&self, harmonics: &Harmonics<D>, x: Complex64) -> Complex64 {
         let mut value = Complex64::new(1.0, 0.0);
-        self.eliminate(harmonics, a, |n, pivot| value *= determinant(pivot) / harmonics.determinants[n]);
+        self.eliminate(harmonics, x, |n, pivot| value *= determinant(pivot) / harmonics.determinants[n]);
         value
-    }
-
-    /// F(0), which is real: its sign tells the parity of the number of real growing exponents.
-    pub fn on_real_line(&self, a: f64) -> f64 {
-        self.at(Complex64::new(self.axis, 0.0), a).re
-    }
-
-    /// F(s) for the acceleration a.
-    pub fn at(&self, s: Complex64, a: f64) -> Complex64 {
-        self.determinant(&self.harmonics(s), a)
     }
 
     /// Π det S_n(s) over fixed reference sizes: vanishes where F does, but has no poles at the exponents without
@@ -154,7 +168,9 @@ where
     pub fn characteristic(&self, s: Complex64, a: f64, reference: &Reference) -> Complex64 {
         let harmonics = self.harmonics_for(s, reference.upper_half);
         let mut value = Complex64::new(1.0, 0.0);
-        self.eliminate(&harmonics, a, |n, pivot| value *= determinant(pivot) / reference.sizes[n]);
+        self.eliminate(&harmonics, Complex64::new(a * a, 0.0), |n, pivot| {
+            value *= determinant(pivot) / reference.sizes[n]
+        });
         value
     }
 
@@ -169,7 +185,7 @@ where
     pub fn mode(&self, s: Complex64, a: f64) -> Vec<OVector<Complex64, D>> {
         let harmonics = self.harmonics(s);
         let mut pivots = vec![None; harmonics.blocks.len()];
-        self.eliminate(&harmonics, a, |n, pivot| pivots[n] = Some(pivot.clone()));
+        self.eliminate(&harmonics, Complex64::new(a * a, 0.0), |n, pivot| pivots[n] = Some(pivot.clone()));
         let centre = harmonics.centre;
         let mut mode =
             vec![OVector::zeros_generic(self.stiffness.size(), nalgebra::Const::<1>); pivots.len()];
@@ -196,42 +212,9 @@ where
         mode
     }
 
-    /// The matrix whose eigenvalues are the inverses of the marginal accelerations at one point of the axis:
-    /// −½ M_n⁻¹ G between neighbouring harmonics.
-    pub fn neutral_matrix(&self, harmonics: &Harmonics<D>) -> nalgebra::DMatrix<Complex64> {
-        let (n, blocks) = (self.stiffness.size().value(), harmonics.blocks.len());
-        let mut matrix = nalgebra::DMatrix::zeros(n * blocks, n * blocks);
-        for (at, block) in harmonics.blocks.iter().enumerate() {
-            let Some(inverse) = block.clone().try_inverse() else { continue };
-            for neighbour in [at.wrapping_sub(1), at + 1] {
-                if neighbour >= blocks {
-                    continue;
-                }
-                for r in 0..n {
-                    for c in 0..n {
-                        matrix[(at * n + r, neighbour * n + c)] =
-                            inverse[(r, c)] * (-0.5 * self.stiffness.weight[c]);
-                    }
-                }
-            }
-        }
-        matrix
-    }
-
-    /// ‖M(iy)⁻¹G‖ (Frobenius): how far a harmonic follows a unit of extra gravity (see `screen`).
-    pub fn gain(&self, y: f64) -> f64 {
-        self.meter.charge(1);
-        self.stiffness.at(Complex64::new(0.0, y)).try_inverse().map_or(f64::INFINITY, |mut inverse| {
-            for (i, mut column) in inverse.column_iter_mut().enumerate() {
-                column *= Complex64::new(self.stiffness.weight[i], 0.0);
-            }
-            inverse.norm()
-        })
-    }
-
     /// Runs the elimination and hands out each pivot with its index, the centre last.
-    fn eliminate(&self, harmonics: &Harmonics<D>, a: f64, mut pivot: impl FnMut(usize, &Square<D>)) {
-        let quarter = Complex64::new(a * a / 4.0, 0.0);
+    fn eliminate(&self, harmonics: &Harmonics<D>, x: Complex64, mut pivot: impl FnMut(usize, &Square<D>)) {
+        let quarter = x / 4.0;
         let weight = &self.stiffness.weight;
         let term = |s: &Square<D>| -> Square<D> {
             let mut inverse =

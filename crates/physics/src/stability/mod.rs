@@ -1,27 +1,32 @@
 //! Stability of a slab under vertical vibration: full linearised Navier–Stokes, every Floquet exponent.
 
 mod count;
+mod curves;
+mod eigenvalues;
 mod exponent;
 mod face_forces;
 mod failure;
 mod from_stack;
 mod hill;
 pub mod layered;
+mod locus;
 mod modes;
 mod neutral;
-mod screen;
 mod side_walls;
 mod slab;
+mod spectrum;
 mod stiffness;
 mod unforced;
+mod windows;
 
+pub use count::growing_exponents;
 pub use exponent::{Growth, growth};
 pub use failure::Failure;
 pub use from_stack::layered;
 pub use modes::{CellMode, cell_modes};
-pub use neutral::{Neutral, neutral};
+pub use neutral::{Neutral, UnstableInterval, neutral, unstable_intervals};
 pub use side_walls::{SideWalls, WallAction, Walls};
-pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab};
+pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab, slab_by_every_mode};
 
 /// Runs an expression with the number of interfaces as a constant where it is small, so that the inner loops work
 /// on matrices of fixed size.

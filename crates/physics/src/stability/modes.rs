@@ -28,11 +28,6 @@ pub fn cell_modes(plan: Plan, up_to: f64, most: usize) -> Vec<CellMode> {
     modes
 }
 
-/// Mean number of modes per unit wavenumber at k (Weyl's law): area·k/(2π), in m.
-pub fn mode_density(plan: Plan, k: f64) -> f64 {
-    plan.area() * k / std::f64::consts::TAU
-}
-
 /// The wavenumber below which about `most` modes lie (Weyl's law with its perimeter term), so that no more are made.
 fn reach(area: f64, perimeter: f64, most: usize) -> f64 {
     // N(k) ≈ area k²/4π + perimeter k/4π for a free line; solved for k, with room to spare.

@@ -1,42 +1,37 @@
-//! The verdict on a slab: every mode of its cell, the worst of them, and the window of the drive.
+//! The verdict on a slab: every mode of its cell, the worst of them, and the windows of the drive.
 //!
-//! Each mode of the cell is a `Probe`. A mode whose heavier side is below at rest is certified quiet up to some
-//! acceleration without following exponents (`screen`); wherever that does not suffice its growing exponents are
-//! counted (`count`). Of every mode that falls at rest the *hold limit* is the acceleration at which it comes to
-//! rest; of every mode the *wave limit* is the next acceleration at which it stirs again. The slab's hold limit is
-//! the largest of the former, its wave limit the smallest of the latter; where they are in that order there is a
-//! window. Above the first window further ones are looked for on a grid (`STEP`).
+//! Of each wavenumber examined (a `Node`) the loci of critical drives (`locus`) give every interval of acceleration in
+//! which it grows. What no mode covers are the windows.
 //!
-//! Modes far up are dense; beyond [`MOST_CELL_MODES`] of them the wavenumber is treated as continuous, on a
-//! geometric mesh (`DENSE_STEP`).
+//! # Which modes are examined
+//! Not all: the marginal accelerations are smooth curves a(k), and smooth on the scale of k itself whatever the damping,
+//! in x = a² even at the tip of a tongue (x = x_tip + c (k − k_tip)²). So the search starts with a ladder of modes a fixed
+//! ratio apart (`RUNG`) up to where damping and tension keep every locus beyond the largest acceleration asked for, and
+//! puts further modes of the cell where a curve between two neighbours, continued by the parabola through three, may reach
+//! into a window (`curves`), until between no two neighbours anything can: the cost follows the edges of the unstable band,
+//! not the number of modes. [`slab_by_every_mode`] examines each mode instead; the tests compare the two on thousands of
+//! random stacks.
 
-use super::count::{Count, Line};
+use super::curves::{Gap, Reaches};
 use super::exponent::{Growth, TRUNCATION, leading_of, liveliest};
 use super::failure::Failure;
 use super::hill::{Hill, Meter};
 use super::layered::{Forcing, Layered, Response};
-use super::modes::{cell_modes, mode_density};
-use super::neutral::border;
-use super::screen::quiet_up_to;
+use super::locus::{Crossing, Locus, locus};
+use super::spectrum::Spectrum;
 use super::stiffness::{Size, Stiffness};
 use super::unforced;
+use super::windows::{self, Window};
 use crate::stack::Plan;
 use nalgebra::DefaultAllocator;
 use nalgebra::allocator::Allocator;
 use num_complex::Complex64;
 
-/// Cell modes that are judged one by one; a denser spectrum continues as a continuum.
-const MOST_CELL_MODES: usize = 800;
-/// Relative step of wavenumber in the continuum.
-const DENSE_STEP: f64 = 1.004;
-/// Relative step of acceleration between counts when a window is looked for.
-const STEP: f64 = 1.05;
-/// The same when the onset of waves of one mode is looked for: a mode that stirs keeps stirring over a wider range.
-const WIDE_STEP: f64 = 1.2;
-/// Modes whose decay is computed when nothing grows: so many with an exponent estimated closest to the axis.
-const CLOSEST: usize = 8;
-/// What a slab may cost. Beyond it lie thousands of stirring modes (thin liquids in wide cells far above their first
-/// waves), 100 standard gravities at a fifth of a hertz, films of micrometres; they end as a typed outcome.
+/// Ratio of neighbouring wavenumbers that the search starts with.
+const RUNG: f64 = 1.25;
+/// Beyond the last wavenumber every locus keeps this factor (in x = a²) from the largest acceleration.
+const QUIET: f64 = 4.0;
+/// What a slab may cost, in evaluations of the layers' response; more ends as a typed outcome.
 const MOST_BLOCKS: u64 = 20_000_000;
 /// The search ends at this multiple of the set acceleration …
 const BEYOND_SET: f64 = 3.0;
@@ -44,6 +39,10 @@ const BEYOND_SET: f64 = 3.0;
 const BEYOND_HOLD: f64 = 3.0;
 /// … or at this acceleration, m/s² (50 standard gravities), whichever is largest.
 const AT_LEAST: f64 = 490.3325;
+/// Where the hunt for the worst mode starts: from so many modes of every band that grows …
+const A_BAND: usize = 6;
+/// … or, when nothing grows, from so many with an exponent estimated closest to the axis.
+const CLOSEST: usize = 4;
 
 /// Which horizontal shape a result belongs to.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -119,8 +118,12 @@ pub struct SlabStability {
     pub searched_up_to: f64,
     /// Wavenumber beyond which every mode is certified quiet up to there, 1/m.
     pub wavenumbers_up_to: f64,
-    /// Modes judged.
+    /// Modes judged (in the continuum by their mean number).
     pub modes: usize,
+    /// Wavenumbers whose loci were followed to judge them.
+    pub examined: usize,
+    /// Evaluations of the layers' response that it took.
+    pub evaluations: u64,
 }
 
 /// Judges a slab in a cell of the given plan under the given drive.
@@ -133,6 +136,36 @@ pub fn slab(
     plan: Plan,
     cancel: &dyn Fn() -> bool,
 ) -> Result<SlabStability, Failure> {
+    judged(layered, forcing, plan, Search::WhereItMatters, cancel)
+}
+
+/// The same by examining every mode of the cell (and every mesh point of the continuum) up to the last that can
+/// stir: slow, and sure without any argument about curves.
+///
+/// # Errors
+/// [`Failure`], as [`super::growth`].
+pub fn slab_by_every_mode(
+    layered: &Layered,
+    forcing: &Forcing,
+    plan: Plan,
+    cancel: &dyn Fn() -> bool,
+) -> Result<SlabStability, Failure> {
+    judged(layered, forcing, plan, Search::EveryMode, cancel)
+}
+
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Search {
+    WhereItMatters,
+    EveryMode,
+}
+
+fn judged(
+    layered: &Layered,
+    forcing: &Forcing,
+    plan: Plan,
+    search: Search,
+    cancel: &dyn Fn() -> bool,
+) -> Result<SlabStability, Failure> {
     layered.check()?;
     forcing.check()?;
     for size in match plan {
@@ -143,134 +176,84 @@ pub fn slab(
             return Err(Failure::Unusable { quantity: "cell size", value: size });
         }
     }
-    super::with_size!(layered, size => Judge::new(layered, forcing, plan, size, cancel)?.judge())
+    super::with_size!(layered, size => Judge::new(layered, forcing, plan, size, cancel).judge(search))
 }
 
-/// One mode under examination.
-struct Probe<D: Size>
+/// One wavenumber under examination.
+struct Node<D: Size>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
     wavenumber: f64,
     mode: Mode,
     hill: Hill<D>,
-    hints: Vec<Complex64>,
-    /// Made when first needed.
-    line: Option<Line<D>>,
-    falls_at_rest: bool,
-    /// Certified quiet up to here, m/s².
-    quiet: f64,
-    /// Estimated distance of its nearest exponent from the axis at the set drive, 1/s; infinite where not looked.
-    distance: f64,
+    locus: Locus,
+    /// The leading exponent at the set acceleration, once it was asked for.
+    growth: Option<Growth>,
 }
 
-impl<D: Size> Probe<D>
+impl<D: Size> Node<D>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    fn new(judge: &Judge<D>, wavenumber: f64, mode: Mode) -> Self {
-        let stiffness = Stiffness::new(judge.layered, wavenumber, judge.size);
-        let omega = judge.forcing.omega;
-        let hill = Hill::new(stiffness, omega, judge.up_to, TRUNCATION, judge.meter.clone());
-        let hints = unforced::hints(&hill.stiffness, judge.layered.viscous_decay(wavenumber));
-        let falls_at_rest = hill.stiffness.growing_without_drive(0.0) > 0;
-        let quiet = quiet_up_to(&hill, &hints);
-        Probe { wavenumber, mode, hill, hints, line: None, falls_at_rest, quiet, distance: f64::INFINITY }
-    }
-
-    /// Whether the certificate alone says that nothing grows at `a`.
-    fn is_screened(&self, a: f64) -> bool {
-        !self.falls_at_rest && a <= self.quiet
-    }
-
-    fn line(&mut self) -> (&Hill<D>, &mut Line<D>) {
-        let Probe { hill, hints, line, .. } = self;
-        (hill, line.get_or_insert_with(|| Line::new(hill, 0.0, hints)))
-    }
-
-    fn count(&mut self, a: f64) -> Result<Count, Failure> {
-        let k = self.wavenumber;
-        let (hill, line) = self.line();
-        line.count(hill, a, k)
-    }
-
-    fn grows(&mut self, a: f64) -> Result<bool, Failure> {
-        Ok(!self.is_screened(a) && self.count(a)?.right > 0)
-    }
-
-    fn leading(&mut self, a: f64, cancel: &dyn Fn() -> bool) -> Result<Growth, Failure> {
-        let k = self.wavenumber;
-        let Probe { hill, hints, line, .. } = self;
-        let line = line.get_or_insert_with(|| Line::new(hill, 0.0, hints));
-        leading_of(hill, hints, line, a, k, cancel)
-    }
-
-    /// Brackets the acceleration at which the last of the exponents that grow at rest leaves the right half plane
-    /// along the real line; `None` when that does not happen up to `up_to`.
-    fn end_of_fall(&mut self, up_to: f64) -> Result<Option<(f64, f64)>, Failure> {
-        let mut falling = self.hill.stiffness.growing_without_drive(0.0);
-        let mut low = 1e-4 * up_to;
-        // F = 1 without drive.
-        let mut sign = 1.0;
-        let mut high = low;
-        while high <= up_to {
-            if self.hill.on_real_line(high) * sign < 0.0 {
-                sign = -sign;
-                falling -= 1;
-                if falling == 0 {
-                    return Ok(Some((low, high)));
-                }
-            }
-            low = high;
-            high *= STEP;
+    /// Where it ceases to fall: 0 when it does not fall at rest, `None` when it falls at every acceleration.
+    ///
+    /// A fall is a real exponent that leaves along the real line. (Where waves set in before, the mode as a whole never
+    /// comes to rest, but the fall still has its end.)
+    fn end_of_fall(&self) -> Option<(f64, Option<Crossing>)> {
+        let falling = self.locus.growing_at_rest;
+        if falling == 0 {
+            return Some((0.0, None));
         }
-        Ok(None)
+        let mut harmonic = self.locus.crossings.iter().filter(|c| c.response == Response::Harmonic);
+        harmonic.nth(falling - 1).map(|crossing| (crossing.acceleration, Some(*crossing)))
     }
 
-    /// Bisects the sign change on the real line.
-    fn end_of_fall_between(&mut self, mut low: f64, mut high: f64) -> Result<(f64, SetBy), Failure> {
-        let above = self.hill.on_real_line(high);
-        while high - low > 1e-11 * high {
-            let middle = 0.5 * (low + high);
-            if middle <= low || middle >= high {
-                break;
-            }
-            if self.hill.on_real_line(middle) * above > 0.0 { high = middle } else { low = middle }
+    /// Where it first stirs after it was at rest.
+    fn onset(&self) -> Option<Crossing> {
+        let mut number = self.locus.growing_at_rest as i32;
+        self.locus.crossings.iter().copied().find(|crossing| {
+            let rested = number <= 0;
+            number += crossing.change;
+            rested && number > 0
+        })
+    }
+
+    fn set_by(&self, crossing: &Crossing) -> SetBy {
+        let exponent = Complex64::new(0.0, crossing.frequency);
+        SetBy {
+            interface: liveliest(&self.hill, exponent, crossing.acceleration),
+            wavenumber: self.wavenumber,
+            mode: self.mode,
+            response: crossing.response,
         }
-        let a = 0.5 * (low + high);
-        let interface = liveliest(&self.hill, Complex64::new(0.0, 0.0), a);
-        let (wavenumber, mode) = (self.wavenumber, self.mode);
-        Ok((a, SetBy { interface, wavenumber, mode, response: Response::Harmonic }))
     }
 
-    /// The border between `low`, where it grows (or not), and `high`, where it is the other way round.
-    fn border(&mut self, low: f64, high: f64, grows_at_low: bool) -> Result<(f64, SetBy), Failure> {
-        let (k, mode) = (self.wavenumber, self.mode);
-        let ends = ((low, self.count(low)?), (high, self.count(high)?));
-        let (hill, line) = self.line();
-        let change = border(hill, line, ends.0, ends.1, k, |n| (n > 0) == grows_at_low)?;
-        let interface = liveliest(hill, Complex64::new(0.0, change.frequency), change.acceleration);
-        Ok((change.acceleration, SetBy { interface, wavenumber: k, mode, response: change.response }))
+    fn leading(&mut self, layered: &Layered, a: f64, cancel: &dyn Fn() -> bool) -> Result<Growth, Failure> {
+        if let Some(growth) = self.growth {
+            return Ok(growth);
+        }
+        let hints = unforced::hints(&self.hill.stiffness, layered.viscous_decay(self.wavenumber));
+        let growth = leading_of(&self.hill, &hints, &self.locus, a, self.wavenumber, cancel)?;
+        self.growth = Some(growth);
+        Ok(growth)
     }
 }
 
-/// All modes of one slab under examination.
+/// All that is examined of one slab.
 struct Judge<'a, D: Size>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
     layered: &'a Layered,
     forcing: &'a Forcing,
-    plan: Plan,
     size: D,
     cancel: &'a dyn Fn() -> bool,
+    spectrum: Spectrum,
     up_to: f64,
-    /// Beyond this wavenumber every mode is certified quiet up to the acceleration `covered`.
-    wavenumbers_up_to: f64,
-    covered: f64,
     meter: Meter,
-    /// Ascending in wavenumber, complete up to `wavenumbers_up_to`.
-    probes: Vec<Probe<D>>,
+    /// Ascending in wavenumber.
+    nodes: Vec<Node<D>>,
 }
 
 impl<'a, D: Size> Judge<'a, D>
@@ -283,77 +266,29 @@ where
         plan: Plan,
         size: D,
         cancel: &'a dyn Fn() -> bool,
-    ) -> Result<Self, Failure> {
-        let first = cell_modes(plan, f64::INFINITY, 1)[0];
-        let averaged = forcing.omega * (2.0 * layered.gravity.max(0.0) / first.wavenumber).sqrt();
+    ) -> Self {
+        let spectrum = Spectrum::new(plan);
+        let averaged = forcing.omega * (2.0 * layered.gravity.max(0.0) / spectrum.first().0).sqrt();
         let up_to = (BEYOND_SET * forcing.acceleration).max(BEYOND_HOLD * averaged).max(AT_LEAST);
-        let mut judge = Judge {
-            layered,
-            forcing,
-            plan,
-            size,
-            cancel,
-            up_to,
-            wavenumbers_up_to: first.wavenumber,
-            covered: -1.0,
-            meter: Meter::up_to(MOST_BLOCKS),
-            probes: Vec::new(),
-        };
-        // The lowest mode is always there, so that something rings down even where nothing can stir.
-        judge.probes.push(judge.probe(first.wavenumber, Mode::Cell(first.indices)));
-        Ok(judge)
+        let meter = Meter::up_to(MOST_BLOCKS);
+        Judge { layered, forcing, size, cancel, spectrum, up_to, meter, nodes: Vec::new() }
     }
 
-    fn probe(&self, wavenumber: f64, mode: Mode) -> Probe<D> {
-        Probe::new(self, wavenumber, mode)
+    fn judge(mut self, search: Search) -> Result<SlabStability, Failure> {
+        self.ladder()?;
+        match search {
+            Search::WhereItMatters => self.refine()?,
+            Search::EveryMode => self.fill()?,
+        }
+        self.verdict(search)
     }
 
-    /// Makes the probes complete for accelerations up to `a`: viscosity and tension keep everything quiet beyond
-    /// some wavenumber, which is found by stepping up and bisecting.
-    fn cover(&mut self, a: f64) -> Result<(), Failure> {
-        if a <= self.covered {
-            return Ok(());
-        }
-        let start = self.wavenumbers_up_to;
-        let quiet = |k: f64| self.probe(k, Mode::Continuum).is_screened(a);
-        let mut high = start;
-        while ![1.0, 1.5, 2.2].iter().all(|factor| quiet(factor * high)) {
-            high *= 1.4;
-            self.alive()?;
-            if high > 1e9 {
-                return Err(Failure::Unusable { quantity: "largest wavenumber", value: high });
-            }
-        }
-        let mut low = (high / 1.4).max(start);
-        for _ in 0..4 {
-            let middle = 0.5 * (low + high);
-            if quiet(middle) { high = middle } else { low = middle }
-        }
-        let modes = cell_modes(self.plan, high, MOST_CELL_MODES + 1);
-        let last = self.probes.last().map_or(0.0, |probe| probe.wavenumber);
-        for mode in modes.iter().take(MOST_CELL_MODES).filter(|mode| mode.wavenumber > last * (1.0 + 1e-12)) {
-            self.alive()?;
-            let probe = self.probe(mode.wavenumber, Mode::Cell(mode.indices));
-            self.probes.push(probe);
-        }
-        if modes.len() > MOST_CELL_MODES {
-            let step = |k: f64| (k * DENSE_STEP).max(k + 1.0 / mode_density(self.plan, k));
-            let last = self.probes.last().map_or(0.0, |probe| probe.wavenumber);
-            let mut k = if last >= modes[MOST_CELL_MODES].wavenumber {
-                step(last)
-            } else {
-                modes[MOST_CELL_MODES].wavenumber
-            };
-            while k <= high {
-                self.alive()?;
-                let probe = self.probe(k, Mode::Continuum);
-                self.probes.push(probe);
-                k = step(k);
-            }
-        }
-        self.wavenumbers_up_to = high;
-        self.covered = a;
-        Ok(())
+    fn examine(&self, (wavenumber, mode): (f64, Mode)) -> Result<Node<D>, Failure> {
+        self.alive()?;
+        let stiffness = Stiffness::new(self.layered, wavenumber, self.size);
+        let hill = Hill::new(stiffness, self.forcing.omega, self.up_to, TRUNCATION, self.meter.clone());
+        let locus = locus(&hill, self.up_to, wavenumber)?;
+        Ok(Node { wavenumber, mode, hill, locus, growth: None })
     }
 
     fn alive(&self) -> Result<(), Failure> {
@@ -361,281 +296,276 @@ where
         if (self.cancel)() { Err(Failure::Cancelled) } else { Ok(()) }
     }
 
-    fn judge(mut self) -> Result<SlabStability, Failure> {
-        let set = self.forcing.acceleration;
-        self.cover(set)?;
-        let mut growing = Vec::new();
-        for i in 0..self.probes.len() {
-            self.alive()?;
-            let probe = &mut self.probes[i];
-            let grows = if set == 0.0 {
-                probe.falls_at_rest
-            } else if probe.is_screened(set) {
-                false
-            } else {
-                let count = probe.count(set)?;
-                probe.distance = count.distance;
-                count.right > 0
-            };
-            if grows {
-                growing.push(i);
+    /// Modes a ratio apart up to where two in a row keep all their loci far beyond the largest acceleration.
+    fn ladder(&mut self) -> Result<(), Failure> {
+        let far = QUIET * self.up_to * self.up_to;
+        let mut next = self.spectrum.first();
+        let mut quiet = 0;
+        while quiet < 2 {
+            let node = self.examine(next)?;
+            let still = node.locus.growing_at_rest == 0 && node.locus.smallest > far;
+            quiet = if still { quiet + 1 } else { 0 };
+            self.nodes.push(node);
+            if next.0 > 1e9 {
+                return Err(Failure::Unusable { quantity: "largest wavenumber", value: next.0 });
+            }
+            next = self.spectrum.at_least(RUNG * next.0);
+        }
+        Ok(())
+    }
+
+    /// Puts modes where they can matter to the windows, to the limits or to the edges of the unstable band.
+    fn refine(&mut self) -> Result<(), Failure> {
+        let mut settled = vec![false; self.nodes.len().saturating_sub(1)];
+        loop {
+            let reaches = self.reaches();
+            let mut changed = false;
+            let mut i = 0;
+            while i + 1 < self.nodes.len() {
+                let (low, high) = (self.nodes[i].wavenumber, self.nodes[i + 1].wavenumber);
+                if settled[i] || !self.may_matter(i, &reaches) {
+                    i += 1;
+                    continue;
+                }
+                match self.spectrum.between(low, high) {
+                    Some(next) => {
+                        let node = self.examine(next)?;
+                        self.nodes.insert(i + 1, node);
+                        settled.insert(i, false);
+                        changed = true;
+                        i += 2;
+                    }
+                    None => {
+                        settled[i] = true;
+                        i += 1;
+                    }
+                }
+            }
+            if !changed {
+                return Ok(());
             }
         }
-        let hold = self.hold_limit()?;
-        let wave = self.wave_limit(hold.map(|(a, _)| a))?;
-        let windows = self.windows(hold.map(|(a, _)| a), wave.map(|(a, _)| a))?;
-        let chosen = nearest(&windows, set);
-        // The first window's ends come with what sets them; another window's ends are looked up.
-        let (hold, wave) = match chosen {
-            Some((low, high)) if Some(low) != hold.map(|(a, _)| a) => (
-                Some((low, self.culprit(low, true)?)),
-                match high {
-                    Some(high) => Some((high, self.culprit(high, false)?)),
-                    None => None,
-                },
+    }
+
+    /// What a curve must not reach between two neighbours.
+    fn reaches(&self) -> Reaches {
+        let set = self.forcing.acceleration;
+        let windows = self.windows();
+        let hold = self.hold().map(|(_, a, _)| a);
+        Reaches::new(&windows, set, hold, self.wave().map(|(_, crossing)| crossing.acceleration), self.up_to)
+    }
+
+    fn may_matter(&self, i: usize, reaches: &Reaches) -> bool {
+        let at = |j: usize| self.nodes.get(j).map(|node| (node.wavenumber, &node.locus));
+        let (Some(low), Some(high)) = (at(i), at(i + 1)) else { return false };
+        Gap { before: i.checked_sub(1).and_then(at), low, high, after: at(i + 2) }.may_matter(reaches)
+    }
+
+    /// Puts every mode.
+    fn fill(&mut self) -> Result<(), Failure> {
+        let mut i = 0;
+        while i + 1 < self.nodes.len() {
+            let (low, high) = (self.nodes[i].wavenumber, self.nodes[i + 1].wavenumber);
+            match self.spectrum.between(low, high) {
+                Some(next) => {
+                    let node = self.examine(next)?;
+                    self.nodes.insert(i + 1, node);
+                }
+                None => i += 1,
+            }
+        }
+        Ok(())
+    }
+
+    /// Intervals of acceleration in which no examined mode grows.
+    fn windows(&self) -> Vec<Window> {
+        let unstable = self.nodes.iter().enumerate().flat_map(|(i, node)| {
+            node.locus.unstable().into_iter().map(move |interval| (i, interval.low, interval.high))
+        });
+        windows::between(unstable, self.up_to)
+    }
+
+    /// The acceleration at which the last mode ceases to fall, and that mode; `None` when some mode falls at every
+    /// acceleration looked at.
+    fn hold(&self) -> Option<(usize, f64, Option<Crossing>)> {
+        let mut hold = (0, 0.0, None);
+        for (i, node) in self.nodes.iter().enumerate() {
+            let (a, by) = node.end_of_fall()?;
+            if a > hold.1 {
+                hold = (i, a, by);
+            }
+        }
+        Some(hold)
+    }
+
+    /// The smallest acceleration at which some mode stirs that was at rest.
+    fn wave(&self) -> Option<(usize, Crossing)> {
+        let onsets = self.nodes.iter().enumerate().filter_map(|(i, node)| Some((i, node.onset()?)));
+        onsets.min_by(|x, y| x.1.acceleration.total_cmp(&y.1.acceleration))
+    }
+
+    fn verdict(mut self, search: Search) -> Result<SlabStability, Failure> {
+        let set = self.forcing.acceleration;
+        let windows = self.windows();
+        let end = |end: &windows::End| {
+            let node = &self.nodes[end.by];
+            let crossing = node.locus.crossings.iter().find(|crossing| crossing.acceleration == end.at);
+            crossing.map(|crossing| node.set_by(crossing))
+        };
+        let (hold, wave) = match windows::nearest(&windows, set) {
+            Some(window) => (
+                Some((window.low.as_ref().map_or(0.0, |low| low.at), window.low.as_ref().and_then(end))),
+                window.high.as_ref().map(|high| (high.at, end(high))),
             ),
-            _ => (hold, wave.map(|(a, by)| (a, Some(by)))),
+            None => (
+                self.hold().map(|(i, a, by)| (a, by.map(|crossing| self.nodes[i].set_by(&crossing)))),
+                self.wave()
+                    .map(|(i, crossing)| (crossing.acceleration, Some(self.nodes[i].set_by(&crossing)))),
+            ),
         };
-        let worst = self.worst(&growing, set)?;
-        let mechanism = match growing.is_empty() {
-            true => Mechanism::None,
-            false if self.is_falling(worst.wavenumber, set)? => Mechanism::Falls,
-            false => Mechanism::Waves,
+        let growing: Vec<bool> = self.nodes.iter().map(|node| node.locus.growing(set) > 0).collect();
+        let any = growing.contains(&true);
+        let band = |f: fn(f64, f64) -> f64| {
+            let inside = self.nodes.iter().zip(&growing).filter(|(_, grows)| **grows);
+            inside.map(|(node, _)| node.wavenumber).reduce(f)
         };
-        let band = |f: fn(f64, f64) -> f64| growing.iter().map(|&i| self.probes[i].wavenumber).reduce(f);
+        let unstable_band = band(f64::min).zip(band(f64::max));
+        // Between two neighbours that grow everything does: where that changes the gap has been filled.
+        let between = (1..self.nodes.len())
+            .filter(|&i| growing[i] && growing[i - 1])
+            .map(|i| self.spectrum.count(self.nodes[i - 1].wavenumber, self.nodes[i].wavenumber));
+        let unstable_modes = growing.iter().filter(|grows| **grows).count() + between.sum::<usize>();
+        let (lowest, highest) = (self.nodes[0].wavenumber, self.nodes[self.nodes.len() - 1].wavenumber);
+        let modes = self.spectrum.count(0.5 * lowest, highest) + 1;
+        let worst = self.worst(any, search)?;
+        let mechanism = match any {
+            false => Mechanism::None,
+            true if self.is_falling(worst.wavenumber, set) => Mechanism::Falls,
+            true => Mechanism::Waves,
+        };
         Ok(SlabStability {
             worst,
             mechanism,
-            unstable_band: band(f64::min).zip(band(f64::max)),
-            unstable_modes: growing.len(),
-            windows,
+            unstable_band,
+            unstable_modes,
+            windows: windows
+                .iter()
+                .map(|w| (w.low.as_ref().map_or(0.0, |low| low.at), w.high.as_ref().map(|high| high.at)))
+                .collect(),
             hold_limit: hold.map(|(a, _)| a),
             wave_limit: wave.map(|(a, _)| a),
             hold_set_by: hold.and_then(|(_, by)| by),
             wave_set_by: wave.and_then(|(_, by)| by),
-            ring_down: growing.is_empty().then_some(-worst.growth.rate),
+            ring_down: (!any).then_some(-worst.growth.rate),
             searched_up_to: self.up_to,
-            wavenumbers_up_to: self.wavenumbers_up_to,
-            modes: self.probes.len(),
+            wavenumbers_up_to: highest,
+            modes,
+            examined: self.nodes.len(),
+            evaluations: self.meter.spent(),
         })
     }
 
-    /// The acceleration at which the last mode ceases to fall: (0, nothing) when none falls at rest, `None` when
-    /// some mode falls at every acceleration looked at.
-    ///
-    /// A fall is a real exponent; it ends where the determinant on the real line changes sign. (Where waves set in
-    /// before, the mode as a whole never comes to rest, but the fall still has its end.)
-    fn hold_limit(&mut self) -> Result<Option<(f64, Option<SetBy>)>, Failure> {
-        let mut hold: (f64, Option<SetBy>) = (0.0, None);
-        for i in 0..self.probes.len() {
-            self.alive()?;
-            let up_to = self.up_to;
-            let probe = &mut self.probes[i];
-            if !probe.falls_at_rest || (hold.0 > 0.0 && probe.count(hold.0)?.right == 0) {
-                continue;
-            }
-            let Some((low, high)) = probe.end_of_fall(up_to)? else { return Ok(None) };
-            if high < hold.0 {
-                continue;
-            }
-            let (a, by) = probe.end_of_fall_between(low, high)?;
-            if a > hold.0 {
-                hold = (a, Some(by));
-            }
-        }
-        Ok(Some(hold))
-    }
-
-    /// The smallest acceleration above its own hold limit at which some mode stirs.
-    fn wave_limit(&mut self, hold: Option<f64>) -> Result<Option<(f64, SetBy)>, Failure> {
-        let mut reach =
-            (1.2 * self.forcing.acceleration.max(hold.unwrap_or(0.0))).clamp(0.1 * self.up_to, self.up_to);
-        loop {
-            self.cover(reach)?;
-            let wave = self.wave_limit_up_to(reach, hold)?;
-            if wave.is_some() || reach >= self.up_to {
-                return Ok(wave);
-            }
-            reach = (1.25 * reach).min(self.up_to);
-        }
-    }
-
-    fn wave_limit_up_to(&mut self, reach: f64, hold: Option<f64>) -> Result<Option<(f64, SetBy)>, Failure> {
-        let mut wave: Option<(f64, SetBy)> = None;
-        // The most easily stirred first: the others are then mostly screened.
-        let mut order: Vec<usize> = (0..self.probes.len()).collect();
-        order.sort_by(|&i, &j| self.probes[i].quiet.total_cmp(&self.probes[j].quiet));
-        for i in order {
-            self.alive()?;
-            let end = wave.map_or(reach, |(a, _)| a);
-            let probe = &mut self.probes[i];
-            if probe.is_screened(end) {
-                continue;
-            }
-            let Some(start) = resting_start(probe, hold, end)? else { continue };
-            let mut low = start;
-            while low < end {
-                let high = (low * WIDE_STEP).min(end);
-                if probe.count(high)?.right > 0 {
-                    let (a, by) = probe.border(low, high, false)?;
-                    wave = Some((a, by));
-                    break;
-                }
-                low = high;
-            }
-        }
-        Ok(wave)
-    }
-
-    /// Whether nothing grows at `a`; `last` remembers the culprit, which is asked first.
-    fn is_quiet(&mut self, a: f64, last: &mut usize) -> Result<bool, Failure> {
-        self.alive()?;
-        if self.probes[*last].grows(a)? {
-            return Ok(false);
-        }
-        self.cover(a)?;
-        for i in 0..self.probes.len() {
-            if self.probes[i].grows(a)? {
-                *last = i;
-                return Ok(false);
-            }
-        }
-        Ok(true)
-    }
-
-    fn windows(&mut self, hold: Option<f64>, wave: Option<f64>) -> Result<Vec<(f64, Option<f64>)>, Failure> {
-        let mut windows = Vec::new();
-        let mut from = wave.unwrap_or(self.up_to);
-        if let Some(hold) = hold {
-            if wave.is_none_or(|wave| hold < wave) {
-                windows.push((hold, wave));
-            } else {
-                from = hold;
-            }
-        }
-        // Further windows above: seldom, and only found when wider than the step.
-        let mut last = 0;
-        let mut low = from * (1.0 + 1e-6);
-        let mut quiet = false;
-        while low < self.up_to {
-            let high = (low * STEP).min(self.up_to);
-            let quiet_there = self.is_quiet(high, &mut last)?;
-            if quiet_there != quiet {
-                let border = self.bisect_quiet(low, high, quiet)?;
-                if quiet_there {
-                    windows.push((border, None));
-                } else if let Some(open) = windows.last_mut() {
-                    open.1 = Some(border);
-                }
-                quiet = quiet_there;
-            }
-            low = high;
-        }
-        Ok(windows)
-    }
-
-    fn bisect_quiet(&mut self, mut low: f64, mut high: f64, quiet_at_low: bool) -> Result<f64, Failure> {
-        let mut last = 0;
-        while high - low > 1e-8 * high {
-            let middle = 0.5 * (low + high);
-            if self.is_quiet(middle, &mut last)? == quiet_at_low { low = middle } else { high = middle }
-        }
-        Ok(0.5 * (low + high))
-    }
-
-    /// What grows just outside a border: below it (`lower` end of a window) or above.
-    fn culprit(&mut self, border: f64, lower: bool) -> Result<Option<SetBy>, Failure> {
-        let outside = if lower { border * (1.0 - 1e-6) } else { border * (1.0 + 1e-6) };
-        for probe in &mut self.probes {
-            if probe.grows(outside)? {
-                let inside = if lower { border * (1.0 + 1e-6) } else { border * (1.0 - 1e-6) };
-                let (low, high) = (outside.min(inside), outside.max(inside));
-                return Ok(Some(probe.border(low, high, lower)?.1));
-            }
-        }
-        Ok(None)
-    }
-
-    fn worst(&mut self, growing: &[usize], set: f64) -> Result<Worst, Failure> {
-        let candidates: Vec<usize> = if growing.is_empty() {
-            // The slowest decay sits at the longest waves or where an exponent is estimated close to the axis.
-            let mut order: Vec<usize> = (0..self.probes.len()).collect();
-            order.sort_by(|&i, &j| self.probes[i].distance.total_cmp(&self.probes[j].distance));
-            order.truncate(CLOSEST);
-            order.extend(0..self.probes.len().min(3));
-            order.sort_unstable();
-            order.dedup();
-            order
-        } else {
-            growing.to_vec()
-        };
-        let mut worst: Option<Worst> = None;
+    /// The fastest growing mode, or the least damped when nothing grows: from the nodes with the best estimates uphill
+    /// to a mode whose neighbours are no better.
+    fn worst(&mut self, any_grows: bool, search: Search) -> Result<Worst, Failure> {
+        let set = self.forcing.acceleration;
+        let candidates = self.candidates(any_grows, search);
+        let mut best: Option<(usize, f64)> = None;
         let mut failure = None;
         for i in candidates {
             self.alive()?;
-            let probe = &mut self.probes[i];
-            match probe.leading(set, self.cancel) {
+            match self.nodes[i].leading(self.layered, set, self.cancel) {
                 Ok(growth) => {
-                    if worst.is_none_or(|known| growth.rate > known.growth.rate) {
-                        worst = Some(Worst { wavenumber: probe.wavenumber, mode: probe.mode, growth });
+                    if best.is_none_or(|(_, rate)| growth.rate > rate) {
+                        best = Some((i, growth.rate));
                     }
                 }
                 // A decaying mode that hides among vorticity modes does not spoil the verdict.
-                Err(other) if growing.is_empty() && other != Failure::Cancelled => failure = Some(other),
+                Err(other) if !any_grows && other != Failure::Cancelled => failure = Some(other),
                 Err(other) => return Err(other),
             }
         }
-        worst.ok_or(failure.unwrap_or(Failure::Cancelled))
+        let Some((mut at, mut rate)) = best else { return Err(failure.unwrap_or(Failure::Cancelled)) };
+        let mut open = true;
+        while open {
+            open = false;
+            for side in [0, 1] {
+                let Some(low) = (at + side).checked_sub(1) else { continue };
+                if low + 1 >= self.nodes.len() {
+                    continue;
+                }
+                // First to a neighbour that was not asked yet, then into the gap before it.
+                let beside = if side == 0 { low } else { low + 1 };
+                let waits = self.nodes[beside].growth.is_none()
+                    && (!any_grows || self.nodes[beside].locus.growing(set) > 0);
+                if waits && let Ok(growth) = self.nodes[beside].leading(self.layered, set, self.cancel) {
+                    open = true;
+                    if growth.rate > rate {
+                        (at, rate) = (beside, growth.rate);
+                        continue;
+                    }
+                }
+                let (k0, k1) = (self.nodes[low].wavenumber, self.nodes[low + 1].wavenumber);
+                let Some(next) = self.spectrum.between(k0, k1) else { continue };
+                let mut node = self.examine(next)?;
+                let found = node.leading(self.layered, set, self.cancel);
+                self.nodes.insert(low + 1, node);
+                if low < at {
+                    at += 1;
+                }
+                match found {
+                    Ok(growth) => {
+                        open = true;
+                        if growth.rate > rate {
+                            (at, rate) = (low + 1, growth.rate);
+                        }
+                    }
+                    Err(other) if !any_grows && other != Failure::Cancelled => {}
+                    Err(other) => return Err(other),
+                }
+            }
+        }
+        let growth = self.nodes[at].leading(self.layered, set, self.cancel)?;
+        Ok(Worst { wavenumber: self.nodes[at].wavenumber, mode: self.nodes[at].mode, growth })
+    }
+
+    /// Where the hunt for the worst mode starts: a few in every band that grows, or the closest to growing.
+    fn candidates(&self, any_grows: bool, search: Search) -> Vec<usize> {
+        let set = self.forcing.acceleration;
+        let all = 0..self.nodes.len();
+        let grows = |i: &usize| self.nodes[*i].locus.growing(set) > 0;
+        if search == Search::EveryMode {
+            return all.filter(|i| !any_grows || grows(i)).collect();
+        }
+        if any_grows {
+            let growing: Vec<usize> = all.filter(grows).collect();
+            let bands = growing.chunk_by(|i, j| i + 1 == *j);
+            let few = |band: &[usize]| {
+                band.iter().copied().step_by(band.len().div_ceil(A_BAND)).collect::<Vec<_>>()
+            };
+            return bands.flat_map(few).collect();
+        }
+        let mut closest: Vec<(usize, f64)> = all.map(|i| (i, self.nodes[i].distance(set))).collect();
+        closest.sort_by(|x, y| x.1.total_cmp(&y.1));
+        closest.truncate(CLOSEST);
+        closest.push((0, 0.0));
+        closest.into_iter().map(|(i, _)| i).collect()
     }
 
     /// Whether the mode falls at rest and has never come to rest below the set acceleration.
-    fn is_falling(&mut self, wavenumber: f64, set: f64) -> Result<bool, Failure> {
-        let Some(probe) = self.probes.iter_mut().find(|probe| probe.wavenumber == wavenumber) else {
-            return Ok(false);
-        };
-        if !probe.falls_at_rest {
-            return Ok(false);
-        }
-        let mut a = set;
-        while a > 1e-3 * self.up_to {
-            if probe.count(a)?.right == 0 {
-                return Ok(false);
-            }
-            a /= STEP;
-        }
-        Ok(true)
+    fn is_falling(&self, wavenumber: f64, set: f64) -> bool {
+        let node = self.nodes.iter().find(|node| node.wavenumber == wavenumber);
+        node.and_then(|node| node.locus.unstable().first().copied())
+            .is_some_and(|first| first.low == 0.0 && first.high.is_none_or(|high| high > set))
     }
 }
 
-/// Where a mode first is at rest: 0-like for one that does not fall, else just above its own hold limit.
-fn resting_start<D: Size>(probe: &mut Probe<D>, hold: Option<f64>, end: f64) -> Result<Option<f64>, Failure>
+impl<D: Size> Node<D>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
 {
-    if !probe.falls_at_rest {
-        return Ok(Some(probe.quiet.min(end)));
+    /// An estimate of how far its closest exponent is from the axis, 1/s.
+    fn distance(&self, a: f64) -> f64 {
+        self.locus.exponents_near(a).first().map_or(f64::INFINITY, |s| s.re.abs())
     }
-    // At the slab's hold limit the mode is at rest, unless it already stirs again there.
-    let mut low = 1e-3 * end;
-    if let Some(hold) = hold
-        && hold * (1.0 + 1e-9) < end
-        && probe.count(hold * (1.0 + 1e-9))?.right == 0
-    {
-        return Ok(Some(hold * (1.0 + 1e-9)));
-    }
-    while low < end {
-        if probe.count(low)?.right == 0 {
-            return Ok(Some(low));
-        }
-        low *= STEP;
-    }
-    Ok(None)
-}
-
-/// The window that holds `set`, or the nearest one.
-fn nearest(windows: &[(f64, Option<f64>)], set: f64) -> Option<(f64, Option<f64>)> {
-    let distance = |&(low, high): &(f64, Option<f64>)| {
-        if set < low { low - set } else { high.map_or(0.0, |high| (set - high).max(0.0)) }
-    };
-    windows.iter().copied().min_by(|a, b| distance(a).total_cmp(&distance(b)))
 }
