@@ -34,6 +34,8 @@ const MOST_BLOCKS: u64 = 20_000_000;
 const REAL: f64 = 1e-7;
 /// Within this (times ω) of those lines an exponent is looked for on the line itself.
 const NEARLY_REAL: f64 = 1e-3;
+/// Pieces of the axis from whose ends decaying modes are looked for when estimates mislead.
+const ALONG: usize = 8;
 /// Points a decade of the search for overdamped modes, and the decades below its far end.
 const POINTS_A_DECADE: i32 = 8;
 const DECADES: i32 = 7;
@@ -140,7 +142,14 @@ where
         }
     } else {
         starts.truncate(2 * (hints.len() + 1));
-        search.least_damped_as_estimated(&starts).or_else(|| search.least_damped(&starts))
+        search.least_damped_as_estimated(&starts).or_else(|| {
+            // Where estimates mislead: from the axis beside them, from the modes at rest, and from all along the axis.
+            let beside: Vec<Complex64> = starts.iter().map(|start| Complex64::new(0.0, start.im)).collect();
+            starts.extend(beside);
+            starts.extend(hints.iter().map(|hint| Complex64::new(hint.re, fold(hint.im, omega))));
+            starts.extend((0..=ALONG).map(|i| Complex64::new(0.0, 0.5 * omega * i as f64 / ALONG as f64)));
+            search.least_damped(&starts)
+        })
     };
     let Some(exponent) = best else {
         return Err(Failure::ExponentLost {
