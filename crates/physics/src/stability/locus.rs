@@ -45,7 +45,7 @@ const APART: f64 = 2.5;
 /// Im x over |x| below which an eigenvalue on Im s = 0 or ω/2, where they are real or in conjugate pairs, is real.
 const REAL: f64 = 1e-7;
 /// Relative accuracy of x at a crossing.
-const ACCURACY: f64 = 1e-12;
+const ACCURACY: f64 = 1e-11;
 
 /// The critical drives at one point of the axis.
 #[derive(Debug, Clone)]
@@ -336,29 +336,33 @@ where
     /// are not the same locus.
     fn between(&self, y0: f64, y1: f64, x0: Complex64, x1: Complex64) -> Option<Crossing> {
         let change = if x1.im > x0.im { 2 } else { -2 };
-        let (mut low, mut high) = ((y0, x0), (y1, x1));
-        let mut best = low;
-        let mut side: i32 = 0;
+        // Regula falsi with the weight of a retained end halved (Illinois), on Im x.
+        let (mut low, mut high) = ((y0, x0, x0.im), (y1, x1, x1.im));
+        let mut best = (y0, x0);
+        let mut kept = 0;
         for _ in 0..60 {
-            let (f0, f1) = (low.1.im, high.1.im);
-            let mut t = f0 / (f0 - f1);
-            if !(t > 1e-3 && t < 1.0 - 1e-3) || side.abs() > 3 {
-                t = 0.5;
-                side = 0;
-            }
+            let t = (low.2 / (low.2 - high.2)).clamp(1e-6, 1.0 - 1e-6);
             let y = low.0 + t * (high.0 - low.0);
-            let guess = low.1 + (high.1 - low.1) * t;
-            let x = self.drive_near(y, guess);
+            let x = self.drive_near(y, low.1 + (high.1 - low.1) * t);
+            let moved = (x - best.1).norm();
             best = (y, x);
-            if x.im.abs() <= ACCURACY * x.re.abs() || high.0 - low.0 <= 1e-15 * self.hill.omega {
+            let settled = x.im.abs() <= ACCURACY * x.norm()
+                || (moved <= ACCURACY * x.norm() && x.im.abs() <= 1e3 * ACCURACY * x.norm());
+            if settled || high.0 - low.0 <= 1e-15 * self.hill.omega {
                 break;
             }
-            if (x.im > 0.0) == (f0 > 0.0) {
-                low = best;
-                side = side.min(0) - 1;
+            if (x.im > 0.0) == (low.1.im > 0.0) {
+                low = (y, x, x.im);
+                if kept == 1 {
+                    high.2 *= 0.5;
+                }
+                kept = 1;
             } else {
-                high = best;
-                side = side.max(0) + 1;
+                high = (y, x, x.im);
+                if kept == -1 {
+                    low.2 *= 0.5;
+                }
+                kept = -1;
             }
         }
         let x = best.1;
@@ -390,7 +394,8 @@ where
             }
             (x0, f0) = (x1, f1);
             x1 -= step;
-            if step.norm() <= 1e-14 * x1.norm() {
+            // The next step would be of the order of the square of this one.
+            if step.norm() <= 1e-8 * x1.norm() {
                 break;
             }
             f1 = value(x1);
@@ -523,7 +528,7 @@ fn secant(f: impl Fn(f64) -> f64, x: f64) -> f64 {
         }
         (x0, f0) = (x1, f1);
         x1 = next;
-        if (x1 - x0).abs() <= 1e-15 * x.abs() {
+        if (x1 - x0).abs() <= 1e-10 * x.abs() {
             break;
         }
         f1 = f(x1);

@@ -74,25 +74,44 @@ fn derivative_zeros(m: u32, largest: f64) -> Vec<f64> {
         if m == 0 { -libm::jn(1, x) } else { 0.5 * (libm::jn(order - 1, x) - libm::jn(order + 1, x)) }
     };
     let mut zeros = Vec::new();
-    // Zeros are more than 2 apart (they tend to π from above for m ≥ 1), so steps of 0.5 separate them; the first
-    // lies above m.
+    // Zeros are more than 2 apart (they tend to π from above for m ≥ 1), so steps of 1 separate them; the first lies
+    // above m.
     let mut low = (m as f64).max(0.5);
+    let mut at_low = slope(low);
     while low < largest {
-        let high = low + 0.5;
-        if slope(low) * slope(high) < 0.0 {
-            let (mut a, mut b) = (low, high);
-            for _ in 0..60 {
-                let middle = 0.5 * (a + b);
-                if slope(a) * slope(middle) <= 0.0 { b = middle } else { a = middle }
-            }
-            let zero = 0.5 * (a + b);
+        let high = low + 1.0;
+        let at_high = slope(high);
+        if at_low * at_high < 0.0 {
+            let zero = illinois(slope, (low, at_low), (high, at_high));
             if zero <= largest {
                 zeros.push(zero);
             }
         }
-        low = high;
+        (low, at_low) = (high, at_high);
     }
     zeros
+}
+
+/// The zero between two points of opposite sign: regula falsi with the weight of a retained end halved.
+fn illinois(f: impl Fn(f64) -> f64, low: (f64, f64), high: (f64, f64)) -> f64 {
+    let ((mut a, mut fa), (mut b, mut fb)) = (low, high);
+    let mut x = a;
+    for _ in 0..60 {
+        let last = x;
+        x = (a * fb - b * fa) / (fb - fa);
+        let fx = f(x);
+        if fx == 0.0 || (x - last).abs() <= 1e-15 * x {
+            break;
+        }
+        // `b` is always the newest point.
+        if fx * fb < 0.0 {
+            (a, fa) = (b, fb);
+        } else {
+            fa *= 0.5;
+        }
+        (b, fb) = (x, fx);
+    }
+    x
 }
 
 #[cfg(test)]

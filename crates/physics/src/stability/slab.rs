@@ -40,7 +40,7 @@ const BEYOND_HOLD: f64 = 3.0;
 /// … or at this acceleration, m/s² (50 standard gravities), whichever is largest.
 const AT_LEAST: f64 = 490.3325;
 /// Where the hunt for the worst mode starts: from so many modes of every band that grows …
-const A_BAND: usize = 6;
+const A_BAND: usize = 24;
 /// … or, when nothing grows, from so many with an exponent estimated closest to the axis.
 const CLOSEST: usize = 4;
 
