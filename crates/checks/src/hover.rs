@@ -106,6 +106,7 @@ fn layer(derived: &Derived, index: usize) -> String {
     let mut lines = vec![format!("**{}**: {}", state.name, state.made_of), figures(state)];
     if let Some(cushion) = derived.cushions.iter().find(|cushion| cushion.index == index) {
         lines.extend(self::cushion(derived, cushion));
+        lines.extend(wedged(derived, &cushion.layer));
     }
     if let Some(slab) = derived.slabs.iter().find(|slab| slab.range.contains(&index)) {
         lines.extend(self::slab(derived, slab));
@@ -155,6 +156,30 @@ fn cushion(derived: &Derived, cushion: &Cushion) -> Vec<String> {
                 "Nearest natural frequency of slabs on cushions: {}, {} times the drive.",
                 words::hertz(*f0),
                 words::number(f0 / drive.frequency, 3)
+            ));
+        }
+    }
+    lines
+}
+
+/// The faces that lean into a cushion.
+fn wedged(derived: &Derived, layer: &str) -> Vec<String> {
+    let Some(sideways) = derived.sideways else { return Vec::new() };
+    let mut lines = Vec::new();
+    for slab in &derived.slabs {
+        for wedge in &slab.wedges {
+            let Some((_, share)) = wedge.into.as_ref().filter(|(gas, _)| gas == layer) else { continue };
+            lines.push(format!(
+                "Wedge: {} stands {} higher at one wall than at the other, {} of its thickness (level error {} deg{}, \
+                 cross-axis motion {}; gains {} and {}).",
+                slab.faces[wedge.face].words(),
+                words::millimetres(2.0 * wedge.wall_height),
+                words::percent(*share),
+                words::number(sideways.tilt.to_degrees(), 3),
+                if sideways.tilt_assumed { ", assumed" } else { "" },
+                words::percent(sideways.cross_axis),
+                words::number(wedge.tilt_gain, 3),
+                words::number(wedge.cross_gain, 3),
             ));
         }
     }

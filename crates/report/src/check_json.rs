@@ -4,7 +4,9 @@
 use crate::Checked;
 use crate::line::word;
 use crate::number::{json, put, put_or_null};
-use checks::derived::{Cushion, Derived, Limits, Mechanism, Mode, Response, SetBy, Slab};
+use checks::derived::{
+    Cushion, Derived, FaceWedge, Limits, Mechanism, Mode, Response, SetBy, Sideways, Slab, Validity,
+};
 use serde_json::{Map, Value, json};
 use setup::finding::{Edit, Finding, Fix, Span};
 use setup::lines::{Encoding, LineIndex};
@@ -116,6 +118,10 @@ fn results(derived: &Derived, at_rest: bool) -> Value {
         }
         object.insert("window".to_owned(), Value::Object(entry));
     }
+    if let Some(sideways) = &derived.sideways {
+        object.insert("sideways".to_owned(), self::sideways(sideways));
+    }
+    object.insert("validity".to_owned(), derived.validity.iter().map(validity).collect());
     let defaults = derived.defaults.iter();
     object.insert(
         "defaults".to_owned(),
@@ -156,6 +162,55 @@ fn slab(slab: &Slab, at_rest: bool) -> Value {
         }
         put_or_null(&mut object, "ring_down_per_s", stability.ring_down);
     }
+    if !slab.wedges.is_empty() {
+        object.insert("wedges".to_owned(), slab.wedges.iter().map(|found| wedge(found, slab)).collect());
+    }
+    Value::Object(object)
+}
+
+/// The level error and the cross-axis motion of the cell.
+fn sideways(sideways: &Sideways) -> Value {
+    let mut object = Map::new();
+    put(&mut object, "level_error_rad", sideways.tilt);
+    object.insert("level_error_assumed".to_owned(), json!(sideways.tilt_assumed));
+    put(&mut object, "cross_axis_ratio", sideways.cross_axis);
+    put_or_null(&mut object, "cross_axis_phase_rad", sideways.cross_phase);
+    Value::Object(object)
+}
+
+/// How a face stands under them.
+fn wedge(wedge: &FaceWedge, slab: &Slab) -> Value {
+    let mut object = Map::new();
+    if let Some(face) = slab.faces.get(wedge.face) {
+        object.insert("interface".to_owned(), json!(face.name()));
+    }
+    object.insert("along".to_owned(), json!(wedge.along));
+    put(&mut object, "mean_slope", wedge.mean_slope);
+    put(&mut object, "oscillating_slope", wedge.oscillating_slope);
+    put(&mut object, "wall_height_m", wedge.wall_height);
+    put(&mut object, "tilt_gain", wedge.tilt_gain);
+    put(&mut object, "cross_gain", wedge.cross_gain);
+    let into = wedge.into.as_ref();
+    object.insert("into".to_owned(), json!(into.map(|(gas, _)| gas)));
+    put_or_null(&mut object, "into_ratio", into.map(|(_, share)| *share));
+    object.insert("modes".to_owned(), json!(wedge.modes));
+    object.insert("harmonics".to_owned(), json!(wedge.harmonics));
+    put(&mut object, "harmonics_change", wedge.harmonics_change);
+    put(&mut object, "modes_change", wedge.modes_change);
+    Value::Object(object)
+}
+
+/// One assumption as a number, with the number at which it matters (`null`: never).
+fn validity(validity: &Validity) -> Value {
+    let mut object = Map::new();
+    object.insert("name".to_owned(), json!(validity.name));
+    object.insert("number".to_owned(), json!(validity.number));
+    object.insert("place".to_owned(), json!(validity.place));
+    put(&mut object, "value", validity.value);
+    put_or_null(&mut object, "matters_at", validity.matters_at);
+    object.insert("reached".to_owned(), json!(validity.is_reached()));
+    object.insert("source".to_owned(), json!(validity.source));
+    object.insert("rule".to_owned(), json!(validity.rule));
     Value::Object(object)
 }
 

@@ -121,7 +121,7 @@ pub struct Cell {
     pub open_bottom: Given<bool>,
     /// `contact-line = "pinned"`
     pub pinned_line: Given<bool>,
-    /// rad
+    /// Level error, rad; `None`: written and unreadable.
     pub tilt: Option<Given<f64>>,
 }
 
@@ -151,6 +151,17 @@ pub struct Drive {
     pub acceleration: Given<f64>,
     /// Which key is the set value.
     pub set_by: DriveKey,
+    /// Sideways motion; `None`: written and unreadable.
+    pub cross_axis: Option<CrossAxis>,
+}
+
+/// `cross-axis` of `[drive]`
+#[derive(Debug, Clone, PartialEq)]
+pub struct CrossAxis {
+    /// Sideways over vertical acceleration of the cell, 1.
+    pub ratio: Given<f64>,
+    /// Phase relative to the vertical motion, rad; `None`: not known.
+    pub phase: Option<Given<f64>>,
 }
 
 /// Which of the three keys sets the drive.

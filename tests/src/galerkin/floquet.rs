@@ -46,6 +46,14 @@ pub fn exponents(motion: &Motion, forcing: &Forcing, steps: usize) -> Vec<Expone
 }
 
 /// The linear map of the state (y, ζ) over one period.
+pub fn monodromy(motion: &Motion, forcing: &Forcing, steps: usize) -> DMatrix<f64> {
+    let size = motion.decay.len() + motion.steady.len();
+    propagate(motion, forcing, steps, DMatrix::identity(size, size), &|_, _| 0.0, &mut |_| ())
+}
+
+/// Carries states (y, ζ), one a column, through one period of the drive. `push(column, ωt)` is a sideways force per
+/// mass, in multiples of the wave's own shape of x, which acts on the interfaces beside their stiffness; `each` sees
+/// the states after every step.
 ///
 /// With one step of length h and stage values Y, Z: the stages of a mode are Y = R(1y − hA Σ_i v_i S_i ∘ Z_i), R =
 /// (1 + hλA)⁻¹, so that only the few Z are left to be solved for together.
@@ -53,12 +61,19 @@ pub fn exponents(motion: &Motion, forcing: &Forcing, steps: usize) -> Vec<Expone
 /// # Panics
 /// When a stage system is singular, which would be a defect here.
 #[allow(clippy::expect_used)]
-pub fn monodromy(motion: &Motion, forcing: &Forcing, steps: usize) -> DMatrix<f64> {
+pub(super) fn propagate(
+    motion: &Motion,
+    forcing: &Forcing,
+    steps: usize,
+    mut state: DMatrix<f64>,
+    push: &dyn Fn(usize, f64) -> f64,
+    each: &mut dyn FnMut(&DMatrix<f64>),
+) -> DMatrix<f64> {
     let method = Radau::new(STAGES);
     let h = std::f64::consts::TAU / forcing.omega / steps as f64;
     let ha = h * &method.matrix;
     let (n, modes) = (motion.steady.len(), motion.decay.len());
-    let size = modes + n;
+    let columns = state.ncols();
     let slot = |i: usize, stage: usize| i * STAGES + stage;
 
     // What does not depend on the step: stages of ζ from y, stages of ζ from forces, end of y from forces.
@@ -88,27 +103,30 @@ pub fn monodromy(motion: &Motion, forcing: &Forcing, steps: usize) -> DMatrix<f6
         }
     }
 
-    let mut state = DMatrix::identity(size, size);
     for step in 0..steps {
+        let phase = |p: usize| std::f64::consts::TAU * (step as f64 + method.nodes[p]) / steps as f64;
         let stiffness = DMatrix::from_fn(n * STAGES, n * STAGES, |row, column| {
             if row != column {
                 return 0.0;
             }
             let (i, p) = (row / STAGES, row % STAGES);
-            let phase = std::f64::consts::TAU * (step as f64 + method.nodes[p]) / steps as f64;
-            motion.steady[i] + motion.driven[i] * forcing.acceleration * phase.cos()
+            motion.steady[i] + motion.driven[i] * forcing.acceleration * phase(p).cos()
+        });
+        let pushes = DMatrix::from_fn(n * STAGES, columns, |row, column| {
+            motion.driven[row / STAGES] * push(column, phase(row % STAGES))
         });
         let mut stages = &from_modes * state.rows(0, modes);
         for i in 0..n {
             for p in 0..STAGES {
-                for column in 0..size {
+                for column in 0..columns {
                     stages[(slot(i, p), column)] += state[(modes + i, column)];
                 }
             }
         }
         let system = DMatrix::identity(n * STAGES, n * STAGES) + &feedback * &stiffness;
+        stages += &feedback * &pushes;
         let stages = system.lu().solve(&stages).expect("a regular stage system");
-        let forces = stiffness * &stages;
+        let forces = stiffness * &stages - pushes;
         let mut flow = state.rows_mut(0, modes);
         for (m, kept) in kept.iter().enumerate() {
             flow.row_mut(m).scale_mut(*kept);
@@ -117,6 +135,7 @@ pub fn monodromy(motion: &Motion, forcing: &Forcing, steps: usize) -> DMatrix<f6
         for i in 0..n {
             state.row_mut(modes + i).copy_from(&stages.row(slot(i, STAGES - 1)));
         }
+        each(&state);
     }
     state
 }

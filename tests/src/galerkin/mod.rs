@@ -8,12 +8,14 @@ mod basis;
 mod floquet;
 mod mesh;
 mod motion;
+mod pushed;
 mod radau;
 mod share;
 
 pub use floquet::{Exponent, exponents, monodromy};
 pub use mesh::Resolution;
 pub use motion::Motion;
+pub use pushed::{Pushed, pushed};
 pub use share::interface_share;
 
 use physics::stability::layered::{Forcing, Layered};
@@ -60,6 +62,11 @@ impl Second {
     pub fn shares(&self, acceleration: f64, modes: &[Exponent]) -> Vec<f64> {
         let monodromy = monodromy(&self.motion, &Forcing { omega: self.omega, acceleration }, self.steps);
         modes.iter().map(|mode| interface_share(&self.motion, &monodromy, mode, self.omega)).collect()
+    }
+
+    /// The periodic motion under a sideways force per mass `push(ωt)` at an acceleration: see [`pushed`].
+    pub fn pushed(&self, acceleration: f64, push: &dyn Fn(f64) -> f64) -> Pushed {
+        pushed(&self.motion, &Forcing { omega: self.omega, acceleration }, self.steps, push)
     }
 
     /// Number of unknowns.

@@ -6,10 +6,14 @@ mod run;
 #[cfg(test)]
 pub(crate) mod testing;
 mod trouble;
+mod validity;
+mod wedge;
 mod window;
 
 pub(crate) use run::{Outcome, derive};
 pub(crate) use trouble::Trouble;
+pub use validity::Validity;
+pub use wedge::{FaceWedge, Sideways};
 #[cfg(test)]
 pub(crate) use window::drive_window;
 
@@ -38,6 +42,10 @@ pub struct Derived {
     pub natural_frequencies: Vec<f64>,
     /// What the cell may be driven with.
     pub window: Option<DriveWindow>,
+    /// Level error and cross-axis motion; `None` while a value of them is unreadable.
+    pub sideways: Option<Sideways>,
+    /// How far the equations hold, each assumption as a number.
+    pub validity: Vec<Validity>,
     /// Defaults in force, each with its source.
     pub defaults: Vec<DefaultInForce>,
     /// What the file asks for and was not looked at.
@@ -110,6 +118,8 @@ pub struct Slab {
     /// Largest (ω/kc)² ρ_gas/(ρ_liquid tanh kH) of the gas beside it at its longest mode: the share of the wave's
     /// inertia and stiffness that treating this gas as incompressible leaves out, 1.
     pub gas_compressibility: Option<f64>,
+    /// How its faces stand under level error and cross-axis motion, top first; empty unless the slab is stable.
+    pub wedges: Vec<FaceWedge>,
 }
 
 /// Where a slab sits.

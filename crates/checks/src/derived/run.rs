@@ -3,6 +3,7 @@
 use super::build::build;
 use super::trouble::Trouble;
 use super::window::drive_window;
+use super::{validity, wedge};
 use super::{Cushion, Derived, DriveState, Face, Limits, Motion, Seat, SetBy, Slab, Stability};
 use crate::engine::Engine;
 use physics::response::{self, Chain, SlabMotion};
@@ -70,16 +71,32 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     let moving = drive.is_some();
     outcome.derived.natural_frequencies = chain.natural_frequencies.clone();
     outcome.derived.cushions = cushions(&stack, &chain, moving);
+    let sideways = wedge::sideways(setup);
+    outcome.derived.sideways = sideways;
     let judged: Vec<_> = chain
         .slabs
         .par_iter()
         .map(|motion| {
             let slab = slab(&stack, motion, &forced, moving);
             let judged = judge(&stack, motion, &forced, engine, cancel);
-            (slab, judged)
+            let holds = matches!(&judged, Some(Ok(found)) if found.worst.growth.rate <= 0.0);
+            let wedges = sideways
+                .filter(|_| holds)
+                .map(|sideways| wedge::wedges(&stack, motion, &forced, &sideways, cancel));
+            (slab, judged, wedges)
         })
         .collect();
-    for (mut slab, judged) in judged {
+    for (mut slab, judged, wedges) in judged {
+        let place = &outcome.derived.layers[slab.range.start].place;
+        match wedges {
+            Some(Ok(found)) => slab.wedges = found,
+            Some(Err(Failure::Cancelled)) => outcome.cancelled = true,
+            Some(Err(failure)) => outcome.troubles.push(Trouble::NotConverged {
+                place: place.clone(),
+                detail: format!("the wedge of its faces by a level error: {failure}"),
+            }),
+            None => {}
+        }
         match judged {
             Some(Ok(found)) => slab.stability = Some(stability(&found, moving)),
             Some(Err(Failure::Cancelled)) => outcome.cancelled = true,
@@ -92,6 +109,7 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
         outcome.derived.slabs.push(slab);
     }
     outcome.derived.window = drive.and_then(|drive| drive_window(&outcome.derived.slabs, drive.acceleration));
+    outcome.derived.validity = validity::statements(&outcome.derived);
     let pinned = setup.cell.as_ref().is_some_and(|cell| cell.pinned_line.value);
     if pinned
         && outcome.derived.slabs.iter().any(|slab| slab.seat != Seat::Floating && !slab.faces.is_empty())
@@ -133,6 +151,7 @@ fn slab(stack: &Stack, motion: &SlabMotion, drive: &Drive, moving: bool) -> Slab
         faces: faces(stack, motion.layers.clone()),
         stability: None,
         gas_compressibility: compressibility(stack, motion.layers.clone(), omega),
+        wedges: Vec::new(),
     }
 }
 

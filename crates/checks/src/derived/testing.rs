@@ -17,6 +17,7 @@ pub(crate) fn slab(name: &str) -> Slab {
         ],
         stability: None,
         gas_compressibility: None,
+        wedges: Vec::new(),
     }
 }
 

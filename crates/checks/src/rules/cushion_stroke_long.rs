@@ -13,17 +13,16 @@
 use super::Context;
 use super::context::found;
 use super::cushion_crushed::CRUSHED;
+use super::limits::STROKE_LONG;
 use crate::words;
 use setup::finding::Finding;
 
-/// Stroke over thickness (judgement, see the page).
-const LONG: f64 = 0.05;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let cushions = context.derived().cushions.iter();
     cushions
         .filter_map(|cushion| {
-            let stroke = cushion.stroke_ratio.filter(|stroke| *stroke > LONG && *stroke < CRUSHED)?;
+            let stroke = cushion.stroke_ratio.filter(|stroke| *stroke > STROKE_LONG && *stroke < CRUSHED)?;
             let what = format!(
                 "The faces of cushion \"{}\" move against each other by {} of its thickness (amplitude).",
                 cushion.layer,

@@ -10,17 +10,15 @@
 
 use super::Context;
 use super::context::found;
+use super::limits::GAS_COMPRESSIBLE;
 use crate::words;
 use setup::finding::Finding;
-
-/// Share of the wave's inertia (judgement, see the page).
-const MATTERS: f64 = 0.01;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let slabs = context.derived().slabs.iter().filter(|slab| !slab.faces.is_empty());
     slabs
         .filter_map(|slab| {
-            let share = slab.gas_compressibility.filter(|share| *share > MATTERS)?;
+            let share = slab.gas_compressibility.filter(|share| *share > GAS_COMPRESSIBLE)?;
             context.derived().drive?;
             let what = format!(
                 "Beside \"{}\" the compressibility of the gas changes the waves by about {}.",

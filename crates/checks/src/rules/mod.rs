@@ -8,11 +8,14 @@ mod cushion_near_resonance;
 mod cushion_stroke_long;
 mod cushion_vented;
 mod effect_switched_off;
+mod equations_outside_range;
+mod face_wedged_by_tilt;
 mod gas_layer_compressible;
 mod hold_margin_short;
 mod interface_falls;
 mod interfacial_tension_missing;
 mod internal_fault;
+pub(crate) mod limits;
 mod liquid_shear_dependent;
 mod material_outside_range;
 mod no_holding_drive;
@@ -88,12 +91,19 @@ pub static RULES: &[Rule] = &[
     rule("cushion-stroke-long", Warning, include_str!("cushion_stroke_long.rs"), cushion_stroke_long::check),
     rule("cushion-vented", Error, include_str!("cushion_vented.rs"), cushion_vented::check),
     rule("cushion-crushed", Error, include_str!("cushion_crushed.rs"), cushion_crushed::check),
+    rule("face-wedged-by-tilt", Warning, include_str!("face_wedged_by_tilt.rs"), face_wedged_by_tilt::check),
     rule("stack-overfills-cell", Error, include_str!("stack_overfills_cell.rs"), stack_overfills_cell::check),
     rule(
         "gas-layer-compressible",
         Warning,
         include_str!("gas_layer_compressible.rs"),
         gas_layer_compressible::check,
+    ),
+    rule(
+        "equations-outside-range",
+        Warning,
+        include_str!("equations_outside_range.rs"),
+        equations_outside_range::check,
     ),
     rule("pinned-line-slides", Warning, include_str!("pinned_line_slides.rs"), pinned_line_slides::check),
     rule("effect-switched-off", Warning, include_str!("effect_switched_off.rs"), effect_switched_off::check),
@@ -164,7 +174,7 @@ mod tests {
     #[test]
     fn the_list_and_the_folder_agree() {
         let folder = concat!(env!("CARGO_MANIFEST_DIR"), "/src/rules");
-        let other = ["mod", "context", "testing", "not_looked_at", "value_missing", "values_disagree"];
+        let other = ["mod", "context", "limits", "testing", "not_looked_at", "value_missing", "values_disagree"];
         let mut files: Vec<String> = std::fs::read_dir(folder)
             .expect("the folder of the rules")
             .map(|entry| {

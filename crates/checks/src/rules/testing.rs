@@ -46,6 +46,7 @@ impl Case {
             frequency: given(50.0, "drive.frequency"),
             acceleration: given(g0 * G0, "drive.acceleration"),
             set_by: DriveKey::Acceleration,
+            cross_axis: None,
         });
         case.outcome.derived.drive = Some(DriveState::new(50.0, g0 * G0));
         case
@@ -134,6 +135,27 @@ impl Case {
             stability.worst =
                 SetBy { face: 0, wavenumber: 251.0, mode: Mode::Continuum, response: Response::Other };
         }
+    }
+
+    /// Lets the lower face of the last slab stand askew by so much of its cushion, under so much of an assumed tilt.
+    pub(crate) fn wedge(&mut self, share: f64, tilt: f64) {
+        self.outcome.derived.sideways =
+            Some(Sideways { tilt, tilt_assumed: true, cross_axis: 0.02, cross_phase: None });
+        let slab = self.outcome.derived.slabs.last_mut().expect("a slab");
+        slab.wedges.push(FaceWedge {
+            face: 1,
+            along: "length",
+            mean_slope: 0.01,
+            oscillating_slope: 0.001,
+            wall_height: 2.5e-4,
+            tilt_gain: -2.6,
+            cross_gain: 3.6,
+            into: Some(("cushion".to_owned(), share)),
+            modes: 32,
+            harmonics: 16,
+            harmonics_change: 1e-12,
+            modes_change: 1e-3,
+        });
     }
 
     fn window(&mut self) {

@@ -32,6 +32,24 @@ pub enum Failure {
         /// Matrices of the layers' response that were evaluated before it was given up.
         blocks: u64,
     },
+    /// A mode is marginal at this very drive, so that it answers the least push without bound.
+    Marginal {
+        /// 1/m
+        wavenumber: f64,
+        /// Peak acceleration, m/s²
+        acceleration: f64,
+        /// Answer over push as far as it could be told.
+        gain: f64,
+    },
+    /// More harmonics kept changing the answer.
+    NotSettled {
+        /// 1/m
+        wavenumber: f64,
+        /// Peak acceleration, m/s²
+        acceleration: f64,
+        /// Relative change at the last doubling.
+        change: f64,
+    },
     /// A number that the problem needs is not finite or not positive.
     Unusable {
         /// Which.
@@ -59,6 +77,16 @@ impl std::fmt::Display for Failure {
                 f,
                 "given up after {blocks} evaluations of the layers' response: too many modes stir, or the drive is too \
                  strong for this version"
+            ),
+            Failure::Marginal { wavenumber, acceleration, gain } => write!(
+                f,
+                "at {wavenumber:.4} 1/m and {acceleration:.4} m/s² a mode is marginal and answers {gain:.3e} times \
+                 what pushes it"
+            ),
+            Failure::NotSettled { wavenumber, acceleration, change } => write!(
+                f,
+                "at {wavenumber:.4} 1/m and {acceleration:.4} m/s² the answer still changed by {change:.1e} with the \
+                 number of harmonics"
             ),
             Failure::Unusable { quantity, value } => write!(f, "{quantity} is {value}"),
         }

@@ -17,6 +17,7 @@ mod slab;
 mod spectrum;
 mod stiffness;
 mod unforced;
+pub mod wedge;
 mod windows;
 
 pub use count::growing_exponents;

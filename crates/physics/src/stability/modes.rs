@@ -68,7 +68,7 @@ fn circle(radius: f64, up_to: f64, most: usize) -> Vec<CellMode> {
 }
 
 /// The positive zeros of J_m′ up to `largest`, ascending (without the zero at the origin).
-fn derivative_zeros(m: u32, largest: f64) -> Vec<f64> {
+pub(super) fn derivative_zeros(m: u32, largest: f64) -> Vec<f64> {
     let order = m as i32;
     let slope = |x: f64| {
         if m == 0 { -libm::jn(1, x) } else { 0.5 * (libm::jn(order - 1, x) - libm::jn(order + 1, x)) }

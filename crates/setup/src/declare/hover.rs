@@ -124,6 +124,11 @@ pub fn holds_said(holds: &Holds) -> String {
             format!("{} with its unit, or several in an array", kinds::called(*kind))
         }
         Holds::QuantityOrWord(kind, _, _) => format!("{} with its unit, or a word", kinds::called(*kind)),
+        Holds::QuantityOrTable(kind, _, keys) => {
+            let names: Vec<String> = keys.iter().map(|key| format!("`{}`", key.name)).collect();
+            format!("{} with its unit, or a table of {}", kinds::called(*kind), names.join(", "))
+                .replace("a ratio with its unit", "a ratio")
+        }
         Holds::Word(words) => {
             let words: Vec<String> = words.iter().map(|word| format!("`\"{}\"`", word.word)).collect();
             format!("one of {}", words.join(", "))

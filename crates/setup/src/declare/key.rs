@@ -77,6 +77,8 @@ pub enum Holds {
     Quantities(Kind, Bounds),
     /// A quantity or one of a few words.
     QuantityOrWord(Kind, Bounds, &'static [Word]),
+    /// A quantity, or an inline table that says more of it.
+    QuantityOrTable(Kind, Bounds, &'static [Key]),
     /// One of a few words.
     Word(&'static [Word]),
     /// Free text.

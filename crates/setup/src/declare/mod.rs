@@ -33,7 +33,8 @@ pub fn bounds(holds: &Holds) -> Option<&Bounds> {
         | Holds::Figure(_, bounds)
         | Holds::Range(_, bounds)
         | Holds::Quantities(_, bounds)
-        | Holds::QuantityOrWord(_, bounds, _) => Some(bounds),
+        | Holds::QuantityOrWord(_, bounds, _)
+        | Holds::QuantityOrTable(_, bounds, _) => Some(bounds),
         _ => None,
     }
 }
@@ -45,7 +46,8 @@ pub fn kind(holds: &Holds) -> Option<quantity::Kind> {
         | Holds::Figure(kind, _)
         | Holds::Range(kind, _)
         | Holds::Quantities(kind, _)
-        | Holds::QuantityOrWord(kind, _, _) => Some(*kind),
+        | Holds::QuantityOrWord(kind, _, _)
+        | Holds::QuantityOrTable(kind, _, _) => Some(*kind),
         _ => None,
     }
 }

@@ -95,6 +95,9 @@ pub const ANGLE: Bounds = Bounds::from(-6.3, 6.3, "−360 deg to 360 deg", SLIP)
 /// Level error, rad.
 pub const TILT: Bounds =
     Bounds::from(-0.79, 0.79, "−45 deg to 45 deg", "a cell that leans further holds no level layer");
+/// Sideways over vertical acceleration, 1.
+pub const CROSS_AXIS: Bounds =
+    Bounds::from(0.0, 1.0, "0 to 100 %", "a table that moves more sideways than up is no vertical drive");
 /// N
 pub const FORCE: Bounds = Bounds::from(0.0, 1e9, "0 to 1e9 N", SLIP);
 /// N m

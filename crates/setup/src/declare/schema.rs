@@ -99,6 +99,11 @@ fn shape(holds: &Holds) -> Value {
         Holds::Quantities(kind, _) => {
             json!({ "anyOf": [quantity(*kind), { "type": "array", "items": quantity(*kind), "minItems": 1 }] })
         }
+        Holds::QuantityOrTable(kind, _, keys) => {
+            let table =
+                json!({ "type": "object", "properties": properties(keys), "additionalProperties": false });
+            json!({ "anyOf": [quantity(*kind), table] })
+        }
         Holds::Word(_) => {
             let words: Vec<&str> = words_of(holds).unwrap_or_default().iter().map(|word| word.word).collect();
             json!({ "enum": words })

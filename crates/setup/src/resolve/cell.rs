@@ -33,7 +33,7 @@ impl Resolver<'_> {
         let sealed_top = self.flag(section, "top", "sealed");
         let open_bottom = self.flag(section, "bottom", "open");
         let pinned_line = self.flag(section, "contact-line", "pinned");
-        let tilt = self.written(section, "tilt");
+        let tilt = self.or_default(Some(section), "cell", "cell", "tilt");
         if let Some(plan) = self.plan(section) {
             self.setup.cell = Some(Cell { plan, height, sealed_top, open_bottom, pinned_line, tilt });
         }

@@ -1,10 +1,10 @@
 //! `[drive]`: one set value, and cross-checks.
 
-use super::Resolver;
+use super::{Resolver, given};
 use crate::finding::Finding;
-use crate::resolved::{Drive, DriveKey, Given};
+use crate::resolved::{CrossAxis, Drive, DriveKey, Given};
 use crate::rules::{peak_rms_slip, values_disagree};
-use crate::written::WrittenSection;
+use crate::written::{Written, WrittenSection};
 use quantity::Kind;
 use std::f64::consts::TAU;
 
@@ -43,7 +43,10 @@ impl Resolver<'_> {
             let Some(value) = self.written(section, key) else { continue };
             let acceleration = as_acceleration(value, by, frequency.value);
             match &set {
-                None => set = Some(Drive { frequency: frequency.clone(), acceleration, set_by: by }),
+                None => {
+                    let cross_axis = self.cross_axis(section);
+                    set = Some(Drive { frequency: frequency.clone(), acceleration, set_by: by, cross_axis });
+                }
                 Some(set) => {
                     let finding = cross_check(section, set, key, &acceleration);
                     self.findings.extend(finding);
@@ -52,6 +55,27 @@ impl Resolver<'_> {
         }
         self.setup.drive_unreadable = set.is_none();
         self.setup.drive = set;
+    }
+
+    /// Sideways motion by its ratio, or by ratio and phase.
+    fn cross_axis(&mut self, section: &WrittenSection) -> Option<CrossAxis> {
+        const KEY: &str = "cross-axis";
+        if !matches!(section.value(KEY), Some(Written::Parts(_))) {
+            let ratio = self.or_default(Some(section), "drive", "drive", KEY)?;
+            return Some(CrossAxis { ratio, phase: None });
+        }
+        let part = |name: &str| {
+            let place = format!("{}.{name}", section.place_of(KEY));
+            section.part(KEY, name).map(|quantity| given(quantity, place, self.ambient_pressure()))
+        };
+        let (ratio, phase) = (part("ratio"), part("phase"));
+        if ratio.is_none() {
+            let place = format!("{}.ratio", section.place_of(KEY));
+            let what = "`cross-axis` has a phase and no `ratio`.";
+            let remedy = "Write for example `cross-axis = { ratio = \"5 %\", phase = \"0 deg\" }`.";
+            self.missing(&place, section.span_of(KEY), what, remedy);
+        }
+        Some(CrossAxis { ratio: ratio?, phase })
     }
 }
 
@@ -150,6 +174,25 @@ mod tests {
             );
             assert_eq!(set.set_by, by);
         }
+    }
+
+    #[test]
+    fn cross_axis_motion_is_a_ratio_or_a_ratio_with_its_phase() {
+        let of = |line: &str| {
+            let read = drive(&format!("frequency = \"50 Hz\"\nacceleration = \"10 g0 peak\"\n{line}"));
+            let rules: Vec<_> = read.findings.iter().map(|found| (found.place.clone(), found.rule)).collect();
+            let cross = read.setup.drive.and_then(|drive| drive.cross_axis);
+            (cross.map(|cross| (cross.ratio.value, cross.phase.map(|phase| phase.value))), rules)
+        };
+        assert_eq!(of(""), (Some((0.0, None)), vec![]));
+        assert_eq!(of("cross-axis = \"5 %\""), (Some((0.05, None)), vec![]));
+        assert_eq!(of("cross-axis = 0.05"), (Some((0.05, None)), vec![]));
+        let (found, rules) = of("cross-axis = { ratio = \"5 %\", phase = \"180 deg\" }");
+        assert_eq!((found, rules), (Some((0.05, Some(std::f64::consts::PI))), vec![]));
+        let lacks = vec![("drive.cross-axis.ratio".to_owned(), "value-missing")];
+        assert_eq!(of("cross-axis = { phase = \"180 deg\" }"), (None, lacks));
+        assert_eq!(of("cross-axis = \"5 mm\"").1, [("drive.cross-axis".to_owned(), "unit-of-wrong-kind")]);
+        assert_eq!(of("cross-axis = \"150 %\"").1, [("drive.cross-axis".to_owned(), "value-out-of-range")]);
     }
 
     #[test]

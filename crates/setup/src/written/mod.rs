@@ -63,6 +63,8 @@ pub(crate) enum Written {
     Word(&'static str),
     Boolean(bool),
     Date(String),
+    /// The quantities of a table within a key, by name.
+    Parts(Vec<(&'static str, Quantity)>),
     /// Read for its form only: nothing is computed from it.
     Other,
 }
@@ -126,6 +128,14 @@ impl WrittenSection {
     pub fn quantity(&self, key: &str) -> Option<&Quantity> {
         match self.value(key)? {
             Written::Quantity(quantity) => Some(quantity),
+            _ => None,
+        }
+    }
+
+    /// A quantity of a table within a key.
+    pub fn part(&self, key: &str, part: &str) -> Option<&Quantity> {
+        match self.value(key)? {
+            Written::Parts(parts) => parts.iter().find(|(name, _)| *name == part).map(|(_, q)| q),
             _ => None,
         }
     }

@@ -51,6 +51,10 @@ impl Reader<'_, '_> {
                 }
                 _ => self.quantity(*kind, bounds, value).map(Written::Quantity),
             },
+            Holds::QuantityOrTable(kind, bounds, keys) => match value {
+                Value::Table(table) => self.table(keys, table),
+                _ => self.quantity(*kind, bounds, value).map(Written::Quantity),
+            },
             Holds::Word(words) => self.word(words, value),
             Holds::Text => self.text(value).map(|text| Written::Text(text.value.clone())),
             Holds::Texts => self.texts(value),
@@ -300,16 +304,20 @@ impl Reader<'_, '_> {
         None
     }
 
-    /// A table within a key: its own keys are read for their form only.
+    /// A table within a key.
     fn table(&mut self, keys: &'static [Key], table: &Table) -> Option<Written> {
         let mut whole = true;
+        let mut parts = Vec::new();
         for entry in &table.entries {
             let place = super::join(self.place, &entry.key);
             match keys.iter().find(|key| key.name == entry.key) {
                 Some(key) => {
-                    whole &= Reader { walk: self.walk, key, place: &place }
-                        .holds(&key.holds, &entry.value)
-                        .is_some();
+                    let mut reader = Reader { walk: self.walk, key, place: &place };
+                    match reader.holds(&key.holds, &entry.value) {
+                        Some(Written::Quantity(quantity)) => parts.push((key.name, quantity)),
+                        Some(_) => {}
+                        None => whole = false,
+                    }
                 }
                 None => {
                     let near =
@@ -321,7 +329,7 @@ impl Reader<'_, '_> {
                 }
             }
         }
-        whole.then_some(Written::Other)
+        whole.then_some(Written::Parts(parts))
     }
 
     fn wrong<T>(&mut self, value: &Value) -> Option<T> {

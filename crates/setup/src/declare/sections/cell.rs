@@ -101,10 +101,10 @@ pub(super) const CELL: Section = words(
                 "tilt",
                 Holds::Quantity(Kind::Angle, ranges::TILT),
                 "\"0.1 deg\"",
-                "How far the cell is off level.",
+                "How far the rig is off level, cell and axis of vibration together. (A cell that leans alone on a level table shows as `cross-axis` of the drive: 1 deg is 1.75 %.)",
             )
-            .words(&["level", "slope", "inclination", "angle"])
-            .later("the wedge that a tilt makes"),
+            .words(&["level", "level-error", "slope", "inclination", "angle"])
+            .default("0.1 deg", "practice: cells are levelled within 0.05 to 0.2 deg; 0.1 deg is 1.7 mm in 1 m"),
             Key::new(
                 "like",
                 Holds::Reference(NameOf::Library),
