@@ -177,6 +177,8 @@ const NAMES: &[&str] = &[
     "effect-switched-off",
     "file-not-readable",
     "gas-layer-compressible",
+    "face-wedged-by-tilt",
+    "equations-outside-range",
     "hold-margin-short",
     "interface-falls",
     "interfacial-tension-missing",

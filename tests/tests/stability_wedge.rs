@@ -74,7 +74,8 @@ fn integration_in_time_gives_the_same_wedges() {
         let modes = found.directions[0].evidence.modes;
         for direction in &found.directions {
             let expected = second(&layered, &forcing, direction.size, &sideways, modes);
-            let largest = expected.iter().map(|s| s.wall.abs().max(s.wall_oscillating.norm())).fold(0.0, f64::max);
+            let largest =
+                expected.iter().map(|s| s.wall.abs().max(s.wall_oscillating.norm())).fold(0.0, f64::max);
             for (face, expected) in direction.faces.iter().zip(&expected) {
                 let found = face.under(&sideways);
                 for (found, expected, what) in [

@@ -3,8 +3,8 @@
 use super::build::build;
 use super::trouble::Trouble;
 use super::window::drive_window;
-use super::{validity, wedge};
 use super::{Cushion, Derived, DriveState, Face, Limits, Motion, Seat, SetBy, Slab, Stability};
+use super::{validity, wedge};
 use crate::engine::Engine;
 use physics::response::{self, Chain, SlabMotion};
 use physics::stability::layered::{Forcing, Layered};

@@ -128,8 +128,7 @@ pub(super) fn statements(derived: &Derived) -> Vec<Validity> {
         }
     }
     for cushion in &derived.cushions {
-        let (Some(state), Some(layer)) =
-            (derived.layers.get(cushion.index), stack.layers.get(cushion.index))
+        let (Some(state), Some(layer)) = (derived.layers.get(cushion.index), stack.layers.get(cushion.index))
         else {
             continue;
         };

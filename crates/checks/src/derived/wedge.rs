@@ -136,8 +136,8 @@ pub(super) fn wedges(
 fn beside(stack: &Stack, index: Option<usize>) -> Option<(String, f64)> {
     let index = index?;
     let layer = stack.layers.get(index).filter(|layer| layer.phase() == Phase::Gas)?;
-    let open = (index == 0 && !stack.cell.sealed_top)
-        || (index + 1 == stack.layers.len() && stack.cell.open_bottom);
+    let open =
+        (index == 0 && !stack.cell.sealed_top) || (index + 1 == stack.layers.len() && stack.cell.open_bottom);
     (!open).then(|| (layer.name.clone(), layer.thickness))
 }
 
@@ -162,9 +162,8 @@ fn worst_of(gains: &FaceGains, sideways: &Sideways) -> AtWorst {
     };
     let FaceGains { tilt, in_phase, quadrature } = gains;
     let cross_gain = real(in_phase.mean, quadrature.mean);
-    let sum = |by_tilt: f64, by_cross: f64| {
-        by_tilt.abs() * sideways.tilt + by_cross.abs() * sideways.cross_axis
-    };
+    let sum =
+        |by_tilt: f64, by_cross: f64| by_tilt.abs() * sideways.tilt + by_cross.abs() * sideways.cross_axis;
     let wall_mean = sum(tilt.wall, real(in_phase.wall, quadrature.wall));
     let wall_oscillating =
         sum(tilt.wall_oscillating.norm(), complex(in_phase.wall_oscillating, quadrature.wall_oscillating));

@@ -13,7 +13,7 @@ use super::context::found;
 use crate::words;
 use setup::finding::Finding;
 
-/// Stroke over thickness at which the faces meet.
+/// Stroke over thickness at which the faces meet (geometry, no judgement).
 pub(super) const CRUSHED: f64 = 1.0;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {

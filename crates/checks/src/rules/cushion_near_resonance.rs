@@ -18,7 +18,8 @@ use setup::finding::{Finding, Related};
 
 /// Factor around the drive's frequency (judgement, see the page).
 const NEAR: f64 = 1.2;
-/// Where the natural frequency of one slab on one cushion sits well, over the drive's (designs: 1.4 to 1.7).
+/// Where the natural frequency of one slab on one cushion sits well, over the drive's (judgement, from worked
+/// designs, which have 1.4 to 1.7).
 const GOOD: f64 = 1.5;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {

@@ -17,7 +17,6 @@ use super::limits::STROKE_LONG;
 use crate::words;
 use setup::finding::Finding;
 
-
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let cushions = context.derived().cushions.iter();
     cushions

@@ -21,7 +21,9 @@ pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let mut findings = Vec::new();
     for slab in &context.derived().slabs {
         for wedge in &slab.wedges {
-            let Some((gas, share)) = wedge.into.as_ref().filter(|(_, share)| *share > WEDGED) else { continue };
+            let Some((gas, share)) = wedge.into.as_ref().filter(|(_, share)| *share > WEDGED) else {
+                continue;
+            };
             let face = &slab.faces[wedge.face];
             let assumed = if sideways.tilt_assumed { " (assumed)" } else { "" };
             let cross = if sideways.cross_axis > 0.0 {

@@ -174,7 +174,8 @@ mod tests {
     #[test]
     fn the_list_and_the_folder_agree() {
         let folder = concat!(env!("CARGO_MANIFEST_DIR"), "/src/rules");
-        let other = ["mod", "context", "limits", "testing", "not_looked_at", "value_missing", "values_disagree"];
+        let other =
+            ["mod", "context", "limits", "testing", "not_looked_at", "value_missing", "values_disagree"];
         let mut files: Vec<String> = std::fs::read_dir(folder)
             .expect("the folder of the rules")
             .map(|entry| {

@@ -6,7 +6,7 @@
 //!
 //! What to do: Correct the height of the cell or the thickness of a layer.
 //!
-//! Criterion: the sum of the thicknesses at operating pressure exceeds `cell.height` by more than 10 µm (rounding).
+//! Criterion: the sum of the thicknesses at operating pressure exceeds `cell.height` by more than 10 µm (rounding; judgement: finer than anybody measures a cell).
 //!
 //! Silent when the height is not given or a thickness is not known.
 
@@ -15,7 +15,7 @@ use super::context::found;
 use crate::words;
 use setup::finding::Finding;
 
-/// m
+/// m (judgement, see the page)
 const ROUNDING: f64 = 1e-5;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {

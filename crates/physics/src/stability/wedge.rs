@@ -176,7 +176,12 @@ pub struct Averaged {
 ///
 /// # Errors
 /// [`Failure::Marginal`] at the hold limit, V = 1.
-pub fn averaged(v: f64, wavenumber: f64, acceleration: f64, sideways: &Sideways) -> Result<Averaged, Failure> {
+pub fn averaged(
+    v: f64,
+    wavenumber: f64,
+    acceleration: f64,
+    sideways: &Sideways,
+) -> Result<Averaged, Failure> {
     if (v - 1.0).abs() * MOST_GAIN < 1.0 {
         return Err(Failure::Marginal { wavenumber, acceleration, gain: 1.0 / (v - 1.0).abs() });
     }

@@ -62,8 +62,7 @@ fn a_cell_that_leans_alone_keeps_level_faces_at_any_drive() {
     for (omega, a, kinematic) in [(314.0, 230.0, 1e-3), (500.0, 400.0, 1e-5), (60.0, 8.0, 1e-4)] {
         let found = wedge(&free(0.015, kinematic, 0.0), &at(omega, a), SQUARE, &|| false).unwrap();
         for face in &found.directions[0].faces {
-            let slopes =
-                face.under(&Sideways { tilt: 0.01, cross: Complex64::new(0.01, 0.0) });
+            let slopes = face.under(&Sideways { tilt: 0.01, cross: Complex64::new(0.01, 0.0) });
             assert!((slopes.mean - 0.01).abs() < 1e-9, "{}", slopes.mean);
             assert!((slopes.wall - 0.01).abs() < 1e-9, "{}", slopes.wall);
             assert!(slopes.oscillating.norm() < 1e-9, "{}", slopes.oscillating);

@@ -101,7 +101,7 @@ pub(super) const CELL: Section = words(
                 "tilt",
                 Holds::Quantity(Kind::Angle, ranges::TILT),
                 "\"0.1 deg\"",
-                "How far the rig is off level, cell and axis of vibration together. (A cell that leans alone on a level table shows as `cross-axis` of the drive: 1 deg is 1.75 %.)",
+                "How far the rig is off level, cell and axis of vibration together; a cell that leans alone on a level table adds 1.75 % of `cross-axis` for each degree.",
             )
             .words(&["level", "level-error", "slope", "inclination", "angle"])
             .default("0.1 deg", "practice: cells are levelled within 0.05 to 0.2 deg; 0.1 deg is 1.7 mm in 1 m"),
