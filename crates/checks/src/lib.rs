@@ -9,6 +9,7 @@ mod changes;
 pub mod derived;
 mod engine;
 mod hover;
+mod limits;
 mod rules;
 mod words;
 

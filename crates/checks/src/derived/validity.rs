@@ -4,7 +4,7 @@
 //! the effective gravity g + a(t). It is listed so that nobody has to wonder.
 
 use super::{Derived, Slab};
-use crate::rules::limits;
+use crate::limits;
 use physics::stack::Layer;
 use std::f64::consts::{PI, TAU};
 

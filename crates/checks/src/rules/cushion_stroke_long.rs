@@ -13,7 +13,7 @@
 use super::Context;
 use super::context::found;
 use super::cushion_crushed::CRUSHED;
-use super::limits::STROKE_LONG;
+use crate::limits::STROKE_LONG;
 use crate::words;
 use setup::finding::Finding;
 

@@ -12,7 +12,7 @@
 
 use super::Context;
 use super::context::found;
-use super::limits::WEDGED;
+use crate::limits::WEDGED;
 use crate::words;
 use setup::finding::Finding;
 

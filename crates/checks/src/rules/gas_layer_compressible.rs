@@ -10,7 +10,7 @@
 
 use super::Context;
 use super::context::found;
-use super::limits::GAS_COMPRESSIBLE;
+use crate::limits::GAS_COMPRESSIBLE;
 use crate::words;
 use setup::finding::Finding;
 
