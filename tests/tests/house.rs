@@ -172,6 +172,8 @@ const NAMES: &[&str] = &[
     "amplitude-kind-unsaid",
     "cushion-crushed",
     "cushion-near-resonance",
+    "cushion-harmonics-large",
+    "cushion-bounces-at-half",
     "cushion-stroke-long",
     "cushion-vented",
     "effect-switched-off",

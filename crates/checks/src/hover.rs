@@ -2,7 +2,7 @@
 
 use crate::analysis::Analysis;
 use crate::derived::{
-    Cushion, Derived, DriveState, DriveWindow, LayerState, Limits, Mode, Seat, SetBy, Slab,
+    Bounce, Cushion, Derived, DriveState, DriveWindow, LayerState, Limits, Mode, Seat, SetBy, Slab,
 };
 use crate::rules::response_words;
 use crate::words;
@@ -149,6 +149,7 @@ fn cushion(derived: &Derived, cushion: &Cushion) -> Vec<String> {
             words::percent(stroke)
         ));
     }
+    lines.extend(derived.bounce.as_ref().map(bounce));
     if let Some(drive) = derived.drive {
         let off = |f: &f64| (f / drive.frequency).ln().abs();
         if let Some(f0) = derived.natural_frequencies.iter().min_by(|a, b| off(a).total_cmp(&off(b))) {
@@ -186,6 +187,22 @@ fn wedged(derived: &Derived, layer: &str) -> Vec<String> {
     lines
 }
 
+/// What the swing of the stiffness does, with the rule of thumb beside it.
+fn bounce(bounce: &Bounce) -> String {
+    let estimate = bounce.estimated_stroke.map_or_else(String::new, |stroke| {
+        format!(" (estimate on f = 2 f0: from a stroke of {} on)", words::percent(stroke))
+    });
+    match bounce.threshold_ratio {
+        Some(ratio) => {
+            format!("Bounces by itself from {} of the set drive on{estimate}.", words::percent(ratio))
+        }
+        None => format!(
+            "Does not bounce by itself up to {} of the set drive{estimate}.",
+            words::percent(bounce.searched_to)
+        ),
+    }
+}
+
 fn slab(derived: &Derived, slab: &Slab) -> Vec<String> {
     let seat = match slab.seat {
         Seat::Floating => "on gas",
@@ -202,6 +219,13 @@ fn slab(derived: &Derived, slab: &Slab) -> Vec<String> {
             words::number(motion.amplification, 3),
             words::number(motion.phase.to_degrees(), 3)
         ));
+        if let (Some(second), Some(third)) = (slab.share(2), slab.share(3)) {
+            lines.push(format!(
+                "Harmonics of its acceleration: second {}, third {} of the first.",
+                words::percent(second),
+                words::percent(third)
+            ));
+        }
     }
     let Some(stability) = &slab.stability else {
         if !slab.faces.is_empty() {

@@ -5,7 +5,8 @@ use crate::Checked;
 use crate::line::word;
 use crate::number::{json, put, put_or_null};
 use checks::derived::{
-    Cushion, Derived, FaceWedge, Limits, Mechanism, Mode, Response, SetBy, Sideways, Slab, Validity,
+    Bounce, BounceResponse, Cushion, Derived, FaceWedge, Limits, LostMotion, Mechanism, Mode, Response,
+    SetBy, Sideways, Slab, Validity,
 };
 use serde_json::{Map, Value, json};
 use setup::finding::{Edit, Finding, Fix, Span};
@@ -108,6 +109,12 @@ fn results(derived: &Derived, at_rest: bool) -> Value {
         "natural_frequencies_hz".to_owned(),
         derived.natural_frequencies.iter().filter_map(|f| json(*f)).collect(),
     );
+    if let Some(bounce) = &derived.bounce {
+        object.insert("bounce".to_owned(), self::bounce(bounce));
+    }
+    if let Some(lost) = &derived.lost_motion {
+        object.insert("lost_motion".to_owned(), lost_motion(lost));
+    }
     if let Some(window) = &derived.window {
         let mut entry = Map::new();
         put_or_null(&mut entry, "hold_drive_m_per_s2", window.hold);
@@ -152,6 +159,7 @@ fn slab(slab: &Slab, at_rest: bool) -> Value {
         // Without a drive nothing moves; an amplification does not exist.
         put(&mut object, "acceleration_peak_m_per_s2", 0.0);
     }
+    overtones(&mut object, slab);
     if let Some(stability) = &slab.stability {
         put(&mut object, "growth_rate_per_s", stability.growth_rate);
         object.insert("worst".to_owned(), mode(&stability.worst, slab));
@@ -214,6 +222,57 @@ fn validity(validity: &Validity) -> Value {
     Value::Object(object)
 }
 
+/// Harmonics of the slab's acceleration, time counted from a crest of its fundamental.
+fn overtones(object: &mut Map<String, Value>, slab: &Slab) {
+    if let Some(first) = slab.motion.as_ref().and_then(|motion| motion.nonlinear_acceleration) {
+        put(object, "nonlinear_acceleration_peak_m_per_s2", first);
+    }
+    let Some(overtones) = &slab.overtones else { return };
+    for (order, name) in [(2, "second_harmonic_ratio"), (3, "third_harmonic_ratio")] {
+        put(object, name, slab.share(order).unwrap_or(0.0));
+    }
+    let one = |overtone: &checks::derived::Overtone| {
+        let mut entry = Map::new();
+        entry.insert("order".to_owned(), json!(overtone.order));
+        put(&mut entry, "ratio", overtone.ratio);
+        put(&mut entry, "phase_rad", overtone.phase);
+        Value::Object(entry)
+    };
+    object.insert("overtones".to_owned(), overtones.iter().map(one).collect());
+}
+
+/// The gas springs as a parametric drive of the slabs.
+fn bounce(bounce: &Bounce) -> Value {
+    let numbers = |values: &[f64]| values.iter().filter_map(|value| json(*value)).collect::<Value>();
+    let word = |response: BounceResponse| match response {
+        BounceResponse::Half => "half",
+        BounceResponse::Same => "same",
+        BounceResponse::Pair => "pair",
+    };
+    let mut object = Map::new();
+    put(&mut object, "growth_rate_per_s", bounce.growth_rate);
+    object.insert("frequencies_hz".to_owned(), numbers(&bounce.frequencies));
+    object.insert("response".to_owned(), json!(word(bounce.response)));
+    put_or_null(&mut object, "threshold_drive_ratio", bounce.threshold_ratio);
+    let strokes = bounce.threshold_strokes.as_deref().map_or(Value::Null, numbers);
+    object.insert("threshold_stroke_ratios".to_owned(), strokes);
+    put(&mut object, "searched_up_to_drive_ratio", bounce.searched_to);
+    if let Some(stroke) = bounce.estimated_stroke {
+        put(&mut object, "estimated_threshold_stroke_ratio", stroke);
+    }
+    if let Some(ratio) = bounce.damping_ratio {
+        put(&mut object, "damping_ratio", ratio);
+    }
+    Value::Object(object)
+}
+
+fn lost_motion(lost: &LostMotion) -> Value {
+    let mut object = Map::new();
+    put(&mut object, "reached_drive_ratio", lost.reached);
+    put(&mut object, "stroke_ratio", lost.stroke_ratio);
+    Value::Object(object)
+}
+
 fn limits(object: &mut Map<String, Value>, limits: &Limits, slab: &Slab) {
     let window = |(low, high): &(f64, Option<f64>)| json!([json(*low), high.and_then(json)]);
     object.insert("windows_m_per_s2".to_owned(), limits.windows.iter().map(window).collect());
@@ -254,6 +313,13 @@ fn cushion(cushion: &Cushion) -> Value {
     put(&mut object, "polytropic_im", cushion.polytropic_im);
     if let Some(stroke) = cushion.stroke_ratio {
         put(&mut object, "stroke_ratio", stroke);
+    }
+    if let Some(strokes) = &cushion.stroke_harmonics {
+        let strokes = strokes.iter().filter_map(|stroke| json(*stroke)).collect();
+        object.insert("stroke_ratio_by_harmonic".to_owned(), strokes);
+    }
+    if let Some(shift) = cushion.mean_shift {
+        put(&mut object, "mean_shift_ratio", shift);
     }
     Value::Object(object)
 }

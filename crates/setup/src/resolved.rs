@@ -153,6 +153,8 @@ pub struct Drive {
     pub set_by: DriveKey,
     /// Sideways motion; `None`: written and unreadable.
     pub cross_axis: Option<CrossAxis>,
+    /// `distortion`: second, third … harmonic of the cell's acceleration over its fundamental; empty: none stated.
+    pub distortion: Vec<Given<f64>>,
 }
 
 /// `cross-axis` of `[drive]`

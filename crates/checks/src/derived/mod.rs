@@ -2,6 +2,7 @@
 
 mod build;
 mod figures;
+pub(crate) mod harmonics;
 mod run;
 #[cfg(test)]
 pub(crate) mod testing;
@@ -46,6 +47,10 @@ pub struct Derived {
     pub sideways: Option<Sideways>,
     /// How far the equations hold, each assumption as a number.
     pub validity: Vec<Validity>,
+    /// Whether slabs on cushions leave their motion by themselves; `None`: nothing can, or it is not known.
+    pub bounce: Option<Bounce>,
+    /// The motion that starts from rest does not reach the set drive; slabs and cushions then have no harmonics.
+    pub lost_motion: Option<LostMotion>,
     /// Defaults in force, each with its source.
     pub defaults: Vec<DefaultInForce>,
     /// What the file asks for and was not looked at.
@@ -115,6 +120,8 @@ pub struct Slab {
     pub faces: Vec<Face>,
     /// Every mode of the cell judged; `None` when that has no answer (a finding says why).
     pub stability: Option<Stability>,
+    /// Its harmonics from the second on; `None` when the cell is at rest or they are not known.
+    pub overtones: Option<Vec<Overtone>>,
     /// Largest (ω/kc)² ρ_gas/(ρ_liquid tanh kH) of the gas beside it at its longest mode: the share of the wave's
     /// inertia and stiffness that treating this gas as incompressible leaves out, 1.
     pub gas_compressibility: Option<f64>,
@@ -146,6 +153,64 @@ pub struct Motion {
     pub phase: f64,
     /// |T − 1|·x: peak of its motion along the wall, m.
     pub slide: f64,
+    /// Peak of the fundamental on nonlinear cushions, m/s²; `None` where that is not known.
+    pub nonlinear_acceleration: Option<f64>,
+}
+
+/// A harmonic of a slab's acceleration a (cos ωt + Re Σ ratio e^{i(nωt + phase)}), time from a crest of the first.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Overtone {
+    /// n = 2, 3 …
+    pub order: usize,
+    /// Over the fundamental.
+    pub ratio: f64,
+    /// rad, (−π, π]
+    pub phase: f64,
+}
+
+/// The gas springs as a parametric drive of the slabs.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Bounce {
+    /// Largest Re s, 1/s; positive: the slabs bounce.
+    pub growth_rate: f64,
+    /// Hz, below the drive's: half of it, or two that add up to it.
+    pub frequencies: Vec<f64>,
+    /// How it answers the drive.
+    pub response: BounceResponse,
+    /// Drive over the set one at which it begins; `None`: nowhere up to `searched_to`.
+    pub threshold_ratio: Option<f64>,
+    /// Strokes over thickness there, one per cushion.
+    pub threshold_strokes: Option<Vec<f64>>,
+    /// Frequencies of what begins there.
+    pub threshold_frequencies: Option<Vec<f64>>,
+    /// How it answers the drive there.
+    pub threshold_response: Option<BounceResponse>,
+    /// Drive over the set one that was looked at last.
+    pub searched_to: f64,
+    /// An estimate beside it: 4ζ/(n + 1), the stroke over thickness that starts it on f = 2 f0.
+    pub estimated_stroke: Option<f64>,
+    /// ζ of the natural motion nearest to half the drive.
+    pub damping_ratio: Option<f64>,
+}
+
+/// How a bounce answers the drive.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum BounceResponse {
+    /// At half its frequency.
+    Half,
+    /// At its frequency: another motion of the same period.
+    Same,
+    /// At two frequencies that add up to it.
+    Pair,
+}
+
+/// How far the motion that starts from rest could be followed.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct LostMotion {
+    /// Share of the set drive.
+    pub reached: f64,
+    /// Largest stroke over thickness there.
+    pub stroke_ratio: f64,
 }
 
 /// An interface of a slab by the layers on either side of it.
@@ -222,6 +287,10 @@ pub struct Cushion {
     pub polytropic_im: f64,
     /// Amplitude of the relative motion of its two faces over its thickness; `None` when the cell is at rest.
     pub stroke_ratio: Option<f64>,
+    /// The same by harmonic on the nonlinear spring, n = 1, 2 …; `None` when that is not known.
+    pub stroke_harmonics: Option<Vec<f64>>,
+    /// Change of its mean thickness in motion over its thickness at rest.
+    pub mean_shift: Option<f64>,
 }
 
 /// The window of the drive for the whole stack: **cell** acceleration, peak, m/s².
@@ -253,6 +322,14 @@ impl DriveWindow {
     pub fn wave_margin(&self) -> Option<f64> {
         (self.set > 0.0).then_some(())?;
         self.wave.map(|wave| wave / self.set - 1.0)
+    }
+}
+
+impl Slab {
+    /// The share of the n-th harmonic in its acceleration, 0 where there is none; `None` when not known.
+    pub fn share(&self, order: usize) -> Option<f64> {
+        let overtones = self.overtones.as_ref()?;
+        Some(overtones.iter().find(|overtone| overtone.order == order).map_or(0.0, |overtone| overtone.ratio))
     }
 }
 

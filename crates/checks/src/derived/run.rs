@@ -1,12 +1,13 @@
 //! Which physics runs for one setup: the stack, the chain, every slab, and the window through the chain.
 
 use super::build::build;
+use super::harmonics;
 use super::trouble::Trouble;
 use super::window::drive_window;
 use super::{Cushion, Derived, DriveState, Face, Limits, Motion, Seat, SetBy, Slab, Stability};
 use super::{validity, wedge};
 use crate::engine::Engine;
-use physics::response::{self, Chain, SlabMotion};
+use physics::response::{self, Chain, PeriodicDrive, SlabMotion};
 use physics::stability::layered::{Forcing, Layered};
 use physics::stability::{self, Failure, SlabStability};
 use physics::stack::{Drive, Plan, Stack};
@@ -73,10 +74,13 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     outcome.derived.cushions = cushions(&stack, &chain, moving);
     let sideways = wedge::sideways(setup);
     outcome.derived.sideways = sideways;
-    let judged: Vec<_> = chain
-        .slabs
-        .par_iter()
-        .map(|motion| {
+    let periodic = harmonics::periodic_drive(setup, &forced);
+    let cushion = chain.cushions.first().map_or(0, |cushion| cushion.layer);
+    let place = outcome.derived.layers[cushion].place.clone();
+    let with = |drive: &PeriodicDrive| harmonics::motion(&stack, drive, &place, engine, cancel);
+    let harmonic = periodic.as_ref().map(with);
+    let judge_all = || -> Vec<_> {
+        let one = |motion: &SlabMotion| {
             let slab = slab(&stack, motion, &forced, moving);
             let judged = judge(&stack, motion, &forced, engine, cancel);
             let holds = matches!(&judged, Some(Ok(found)) if found.worst.growth.rate <= 0.0);
@@ -84,8 +88,16 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
                 .filter(|_| holds)
                 .map(|sideways| wedge::wedges(&stack, motion, &forced, &sideways, cancel));
             (slab, judged, wedges)
-        })
-        .collect();
+        };
+        chain.slabs.par_iter().map(one).collect()
+    };
+    let bounce = || match (&periodic, &harmonic) {
+        (Some(drive), Some(harmonics::Motion::Known(_))) => {
+            harmonics::bounce(&stack, drive, &place, engine, cancel)
+        }
+        _ => Ok(None),
+    };
+    let (judged, bounce) = rayon::join(judge_all, bounce);
     for (mut slab, judged, wedges) in judged {
         let place = &outcome.derived.layers[slab.range.start].place;
         match wedges {
@@ -107,6 +119,19 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
             None => {}
         }
         outcome.derived.slabs.push(slab);
+    }
+    match harmonic {
+        Some(harmonics::Motion::Known(motion)) => {
+            harmonics::tell(&motion, &mut outcome.derived.slabs, &mut outcome.derived.cushions);
+        }
+        Some(harmonics::Motion::Lost(lost)) => outcome.derived.lost_motion = Some(lost),
+        Some(harmonics::Motion::Trouble(trouble)) => outcome.troubles.push(trouble),
+        Some(harmonics::Motion::Cancelled) => outcome.cancelled = true,
+        None => {}
+    }
+    match bounce {
+        Ok(bounce) => outcome.derived.bounce = bounce,
+        Err(trouble) => outcome.troubles.extend(trouble),
     }
     outcome.derived.window = drive.and_then(|drive| drive_window(&outcome.derived.slabs, drive.acceleration));
     outcome.derived.validity = validity::statements(&outcome.derived);
@@ -147,9 +172,11 @@ fn slab(stack: &Stack, motion: &SlabMotion, drive: &Drive, moving: bool) -> Slab
             amplification: motion.amplification.norm(),
             phase: motion.amplification.arg(),
             slide: relative * drive.acceleration / (omega * omega),
+            nonlinear_acceleration: None,
         }),
         faces: faces(stack, motion.layers.clone()),
         stability: None,
+        overtones: None,
         gas_compressibility: compressibility(stack, motion.layers.clone(), omega),
         wedges: Vec::new(),
     }
@@ -240,6 +267,8 @@ fn cushions(stack: &Stack, chain: &Chain, moving: bool) -> Vec<Cushion> {
             polytropic_re: cushion.polytropic.re,
             polytropic_im: cushion.polytropic.im,
             stroke_ratio: moving.then_some(cushion.stroke_ratio),
+            stroke_harmonics: None,
+            mean_shift: None,
         })
         .collect()
 }

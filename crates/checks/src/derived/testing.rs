@@ -16,6 +16,7 @@ pub(crate) fn slab(name: &str) -> Slab {
             Face { above: Some(name.to_owned()), below: Some("cushion".to_owned()), heavier_above: true },
         ],
         stability: None,
+        overtones: None,
         gas_compressibility: None,
         wedges: Vec::new(),
     }
@@ -26,7 +27,13 @@ pub(crate) fn windows(slab: Slab, amplification: f64, windows: &[(f64, Option<f6
     let first = windows.first().copied();
     let by = |face, response| SetBy { face, wavenumber: 62.83, mode: Mode::Cell([1, 0]), response };
     Slab {
-        motion: Some(Motion { acceleration: 0.0, amplification, phase: 0.0, slide: 0.0 }),
+        motion: Some(Motion {
+            acceleration: 0.0,
+            amplification,
+            phase: 0.0,
+            slide: 0.0,
+            nonlinear_acceleration: None,
+        }),
         stability: Some(Stability {
             growth_rate: -1.0,
             worst: by(1, Response::Harmonic),

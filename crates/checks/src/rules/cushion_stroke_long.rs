@@ -2,11 +2,11 @@
 //!
 //! A cushion is compressed so far in each period that its spring is no longer linear.
 //!
-//! Why it matters: The slab then moves with overtones of the drive, which the limits here do not contain, and it may start to bounce at half the drive's frequency.
+//! Why it matters: Thickness and pressure then differ much between the two ends of a stroke: the gas layer beside the slab is no longer the one that its limits were computed for, and a small error of gas or drive shows.
 //!
 //! What to do: Use a thicker cushion, a smaller drive, or stay further from resonance.
 //!
-//! Criterion: amplitude of the relative motion of its two faces over its thickness above 5 % (judgement): the gas spring p ∝ V⁻ⁿ then makes a second harmonic of the force of (n+1)/4 · 5 % = 3 % of the first, before any resonance of the slab at twice the drive; and near f = 2 f0 the spring bounces at half the drive's frequency from a stroke of 4ζ/(n+1) on, which is 5 % at ζ = 0.03, the damping of a lightly dragged slab. Neither is computed by this version.
+//! Criterion: amplitude of the relative motion of its two faces over its thickness above 5 % (judgement): the gas spring p ∝ V⁻ⁿ then makes a second harmonic of the force of (n+1)/4 · 5 % = 3 % of the first. What the slab does with it is computed: cushion-harmonics-large, cushion-bounces-at-half.
 //!
 //! Silent where the faces would meet: that is cushion-crushed.
 

@@ -6,7 +6,7 @@
 //!
 //! What to do: Take the line out of `[model]` once you have seen what the effect does.
 //!
-//! Criterion: the setup is computed a second time with every effect on; the verdict is incomplete where a limit of the drive, an amplification or the mechanism of a slab changes by more than 1 % (judgement), or where that cannot be compared. Where it changes by less, and for an effect that this version does not compute in any case, the finding is for information only.
+//! Criterion: the setup is computed a second time with every effect on; the verdict is incomplete where a limit of the drive, an amplification, the second harmonic or the mechanism of a slab changes by more than 1 % (judgement), or where that cannot be compared. Where it changes by less, and for an effect that this version does not compute in any case, the finding is for information only.
 
 use super::Context;
 use super::context::found;
@@ -19,7 +19,8 @@ use setup::finding::{Finding, Severity};
 const MATTERS: f64 = 0.01;
 
 /// Effects that this version computes.
-const COMPUTED: [Effect; 3] = [Effect::WallDrag, Effect::GasHeatLoss, Effect::GasLayers];
+const COMPUTED: [Effect; 4] =
+    [Effect::WallDrag, Effect::GasHeatLoss, Effect::GasLayers, Effect::CushionHarmonics];
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     let difference = context.complete.map(|complete| difference(context.derived(), &complete.derived));
@@ -82,6 +83,11 @@ fn difference(without: &Derived, with: &Derived) -> Option<(f64, String)> {
             let name = format!("the {which} limit of \"{}\"", before.name);
             note(name, limit(before, pick), limit(after, pick), words::acceleration);
         }
+        // Shares of the fundamental: what counts is how far they are apart.
+        let share = |slab: &Slab| slab.share(2).map(|share| 1.0 + share);
+        note(format!("the second harmonic in \"{}\"", before.name), share(before), share(after), |value| {
+            words::percent(value - 1.0)
+        });
         let mechanism = |slab: &Slab| slab.stability.as_ref().map(|stability| stability.mechanism);
         if mechanism(before) != mechanism(after) {
             return Some((

@@ -3,7 +3,9 @@
 
 mod acceptance_without_finding;
 mod context;
+mod cushion_bounces_at_half;
 mod cushion_crushed;
+mod cushion_harmonics_large;
 mod cushion_near_resonance;
 mod cushion_stroke_long;
 mod cushion_vented;
@@ -86,6 +88,18 @@ pub static RULES: &[Rule] = &[
         Warning,
         include_str!("cushion_near_resonance.rs"),
         cushion_near_resonance::check,
+    ),
+    rule(
+        "cushion-harmonics-large",
+        Warning,
+        include_str!("cushion_harmonics_large.rs"),
+        cushion_harmonics_large::check,
+    ),
+    rule(
+        "cushion-bounces-at-half",
+        Warning,
+        include_str!("cushion_bounces_at_half.rs"),
+        cushion_bounces_at_half::check,
     ),
     rule("cushion-stroke-long", Warning, include_str!("cushion_stroke_long.rs"), cushion_stroke_long::check),
     rule("cushion-vented", Error, include_str!("cushion_vented.rs"), cushion_vented::check),

@@ -47,6 +47,7 @@ impl Case {
             acceleration: given(g0 * G0, "drive.acceleration"),
             set_by: DriveKey::Acceleration,
             cross_axis: None,
+            distortion: Vec::new(),
         });
         case.outcome.derived.drive = Some(DriveState::new(50.0, g0 * G0));
         case
@@ -121,6 +122,8 @@ impl Case {
             polytropic_re: 1.39,
             polytropic_im: 0.01,
             stroke_ratio: Some(stroke_ratio),
+            stroke_harmonics: None,
+            mean_shift: None,
         });
         self
     }

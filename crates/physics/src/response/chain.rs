@@ -10,11 +10,11 @@
 //! floor, lid and the slabs that touch them move with X_c. The system is tridiagonal and solved directly, at a cost
 //! linear in the number of slabs. T_i = X_i/X_c.
 
-use super::gas_spring::polytropic_exponent;
+use super::gas_spring::polytropic_exponent_growing;
 use super::natural::natural_frequencies;
 use super::partition::{Part, Seat, partition};
 use super::pressures::{Crushed, static_pressures};
-use super::wall_drag::wall_drag;
+use super::wall_drag::wall_drag_growing;
 use crate::stack::{Drive, Stack};
 use num_complex::Complex64;
 use quantity::vocabulary::Effect;
@@ -165,18 +165,28 @@ impl Mechanism {
 
     /// The exponent of a gas layer at ω.
     pub(super) fn exponent(&self, stack: &Stack, layer: usize, omega: f64) -> Complex64 {
+        self.exponent_growing(stack, layer, Complex64::new(0.0, omega))
+    }
+
+    /// The exponent of a gas layer in a motion ∝ e^{st}.
+    pub(super) fn exponent_growing(&self, stack: &Stack, layer: usize, s: Complex64) -> Complex64 {
         let Some(gas) = stack.layers[layer].gas else { return Complex64::new(1.0, 0.0) };
         match gas.polytropic_exponent {
             Some(prescribed) => Complex64::new(prescribed, 0.0),
-            None if stack.has(Effect::GasHeatLoss) => polytropic_exponent(
+            None if stack.has(Effect::GasHeatLoss) => polytropic_exponent_growing(
                 stack.cell.plan,
                 stack.layers[layer].thickness,
                 gas.adiabatic_index,
                 gas.thermal_diffusivity,
-                omega,
+                s,
             ),
             None => Complex64::new(gas.adiabatic_index, 0.0),
         }
+    }
+
+    /// Mean pressure of a layer, Pa absolute.
+    pub(super) fn pressure(&self, layer: usize) -> f64 {
+        self.pressures[layer]
     }
 
     /// Stiffness per area of each spring position at ω, 0 where there is none, and the compliance of each layer.
@@ -225,19 +235,22 @@ impl Mechanism {
     }
 
     fn drag(&self, stack: &Stack, mass: &Mass, omega: f64) -> Complex64 {
+        self.drag_growing(stack, mass, Complex64::new(0.0, omega))
+    }
+
+    /// Wall drag e of a slab in a motion ∝ e^{st}.
+    pub(super) fn drag_growing(&self, stack: &Stack, mass: &Mass, s: Complex64) -> Complex64 {
         if !stack.has(Effect::WallDrag) {
             return Complex64::new(0.0, 0.0);
         }
-        let total: Complex64 = mass
-            .layers
+        mass.layers
             .clone()
             .map(|i| {
                 let layer = &stack.layers[i];
                 let share = layer.density * layer.thickness / mass.mass;
-                wall_drag(stack.cell.plan, layer.viscosity / layer.density, omega) * share
+                wall_drag_growing(stack.cell.plan, layer.viscosity / layer.density, s) * share
             })
-            .sum();
-        total
+            .sum()
     }
 
     fn response(&self, stack: &Stack, drive: &Drive) -> Result<Chain, ResponseError> {

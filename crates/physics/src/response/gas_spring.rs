@@ -28,7 +28,18 @@ pub fn polytropic_exponent(
     diffusivity: f64,
     omega: f64,
 ) -> Complex64 {
-    let sigma = Complex64::new(0.0, omega / diffusivity);
+    polytropic_exponent_growing(plan, thickness, adiabatic_index, diffusivity, Complex64::new(0.0, omega))
+}
+
+/// The same for a motion ∝ e^{st}, s ≠ 0 and not on the negative real axis.
+pub(super) fn polytropic_exponent_growing(
+    plan: Plan,
+    thickness: f64,
+    adiabatic_index: f64,
+    diffusivity: f64,
+    s: Complex64,
+) -> Complex64 {
+    let sigma = s / diffusivity;
     let z = sigma.sqrt() * (thickness / 2.0);
     let slit = 1.0 - tanh(z) / z;
     // What the side walls take away from the slit's mean: Σ 8/(π²m²) (σ/σ_m)(1 − M(σ_m)), terms like m⁻⁵ beyond

@@ -1,54 +1,11 @@
 //! Checks of the chain: closed forms, textbook identities, worked designs, and direct time integration.
 
+use super::testing::{AMBIENT, G, exponent, gas, oil, square, stack};
 use super::{Part, ResponseError, Seat, chain, force_on_table, partition, static_pressures, sweep};
-use crate::stack::{Cell, Drive, Gas, Layer, Plan, Stack};
+use crate::stack::{Drive, Layer, Plan, Stack};
 use num_complex::Complex64;
 use quantity::vocabulary::Effect;
 use std::f64::consts::{PI, TAU};
-
-const G: f64 = 9.80665;
-const AMBIENT: f64 = 101_325.0;
-
-fn oil(name: &str, mm: f64, density: f64, nu: f64) -> Layer {
-    Layer { name: name.into(), thickness: 1e-3 * mm, density, viscosity: density * nu, gas: None }
-}
-
-fn gas(name: &str, mm: f64) -> Layer {
-    let gas = Gas {
-        adiabatic_index: 1.4,
-        thermal_diffusivity: 2.2e-5,
-        polytropic_exponent: None,
-        vented: false,
-        pressure: None,
-    };
-    Layer { name: name.into(), thickness: 1e-3 * mm, density: 1.2, viscosity: 1.82e-5, gas: Some(gas) }
-}
-
-fn square(mm: f64) -> Plan {
-    Plan::Rectangle { length: 1e-3 * mm, width: 1e-3 * mm }
-}
-
-fn stack(plan: Plan, layers: Vec<Layer>) -> Stack {
-    Stack {
-        ambient_pressure: AMBIENT,
-        ambient_density: 1.2,
-        ambient_viscosity: 1.82e-5,
-        gravity: G,
-        cell: Cell { plan, height: 0.2, sealed_top: false, open_bottom: false },
-        tensions: vec![0.02; layers.len() - 1],
-        layers,
-        top_tension: 0.02,
-        bottom_tension: 0.02,
-        effects_off: Vec::new(),
-    }
-}
-
-fn exponent(mut layer: Layer, n: f64) -> Layer {
-    if let Some(gas) = &mut layer.gas {
-        gas.polytropic_exponent = Some(n);
-    }
-    layer
-}
 
 #[test]
 fn cushion_resonances_of_the_piston_formula() {

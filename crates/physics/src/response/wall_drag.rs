@@ -18,7 +18,12 @@ use num_complex::Complex64;
 
 /// 1/M − 1 for a liquid of kinematic viscosity `nu` (m²/s) at `omega` (rad/s).
 pub fn wall_drag(plan: Plan, nu: f64, omega: f64) -> Complex64 {
-    duct_mean(plan, Complex64::new(0.0, omega / nu)).inv() - 1.0
+    wall_drag_growing(plan, nu, Complex64::new(0.0, omega))
+}
+
+/// The same for a motion ∝ e^{st}, s ≠ 0 and not on the negative real axis (there the layer at the wall has modes).
+pub(super) fn wall_drag_growing(plan: Plan, nu: f64, s: Complex64) -> Complex64 {
+    duct_mean(plan, s / nu).inv() - 1.0
 }
 
 #[cfg(test)]

@@ -45,13 +45,18 @@ impl Resolver<'_> {
             match &set {
                 None => {
                     let cross_axis = self.cross_axis(section);
-                    set = Some(Drive { frequency: frequency.clone(), acceleration, set_by: by, cross_axis });
+                    let distortion = self.written_several(section, "distortion");
+                    let frequency = frequency.clone();
+                    set = Some(Drive { frequency, acceleration, set_by: by, cross_axis, distortion });
                 }
                 Some(set) => {
                     let finding = cross_check(section, set, key, &acceleration);
                     self.findings.extend(finding);
                 }
             }
+        }
+        if section.entry("distortion").is_none() && !self.lost(&section.place_of("distortion")) {
+            self.list_declared_default(section, "distortion");
         }
         self.setup.drive_unreadable = set.is_none();
         self.setup.drive = set;
@@ -193,6 +198,22 @@ mod tests {
         assert_eq!(of("cross-axis = { phase = \"180 deg\" }"), (None, lacks));
         assert_eq!(of("cross-axis = \"5 mm\"").1, [("drive.cross-axis".to_owned(), "unit-of-wrong-kind")]);
         assert_eq!(of("cross-axis = \"150 %\"").1, [("drive.cross-axis".to_owned(), "value-out-of-range")]);
+    }
+
+    #[test]
+    fn distortion_is_read_by_harmonic() {
+        let read = |line: &str| {
+            let read = drive(&format!("frequency = \"50 Hz\"\nacceleration = \"10 g0 peak\"\n{line}"));
+            let distortion = read.setup.drive.expect("a drive").distortion;
+            (distortion.iter().map(|given| given.value).collect::<Vec<_>>(), read.findings.len())
+        };
+        assert_eq!(read("distortion = [\"2 %\", \"1 %\"]"), (vec![0.02, 0.01], 0));
+        // A total: all in the second harmonic.
+        assert_eq!(read("distortion = \"3 %\""), (vec![0.03], 0));
+        assert_eq!(read(""), (vec![], 0));
+        let lost =
+            drive("frequency = \"50 Hz\"\nacceleration = \"10 g0 peak\"\ndistortion = [\"2 %\", \"1 mm\"]");
+        assert!(lost.setup.is_unreadable("drive.distortion") && lost.findings.len() == 1);
     }
 
     #[test]

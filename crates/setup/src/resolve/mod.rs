@@ -81,6 +81,12 @@ impl Resolver<'_> {
         Some(given(quantity, section.place_of(key), self.ambient_pressure()))
     }
 
+    /// The values of a key that holds one or several; empty where it is not written or not readable.
+    fn written_several(&self, section: &WrittenSection, key: &str) -> Vec<Given<f64>> {
+        let several = section.quantities(key).iter();
+        several.map(|quantity| given(quantity, section.place_of(key), self.ambient_pressure())).collect()
+    }
+
     /// The value of a key as written, or its declared default, which is then listed.
     fn or_default(
         &mut self,
@@ -123,6 +129,13 @@ impl Resolver<'_> {
             origin: Origin::Default(source),
             tolerance: None,
             digits: EXACT,
+        }
+    }
+
+    /// Lists the declared default of a key that is not written.
+    fn list_declared_default(&mut self, section: &WrittenSection, key: &str) {
+        if let Some(declared) = section.declaration.key(key) {
+            self.list_default(&section.place_of(key), declared);
         }
     }
 

@@ -56,6 +56,8 @@ pub(crate) struct WrittenEntry {
 #[derive(Debug, Clone, PartialEq)]
 pub(crate) enum Written {
     Quantity(Quantity),
+    /// Several in an array.
+    Quantities(Vec<Quantity>),
     /// (temperature, value) in the order written.
     Figure(Vec<(Quantity, Quantity)>),
     Text(String),
@@ -137,6 +139,15 @@ impl WrittenSection {
         match self.value(key)? {
             Written::Parts(parts) => parts.iter().find(|(name, _)| *name == part).map(|(_, q)| q),
             _ => None,
+        }
+    }
+
+    /// One or several.
+    pub fn quantities(&self, key: &str) -> &[Quantity] {
+        match self.value(key) {
+            Some(Written::Quantity(quantity)) => std::slice::from_ref(quantity),
+            Some(Written::Quantities(quantities)) => quantities,
+            _ => &[],
         }
     }
 

@@ -40,8 +40,9 @@ impl Reader<'_, '_> {
             Holds::Range(kind, bounds) => self.range(*kind, bounds, value),
             Holds::Quantities(kind, bounds) => match value {
                 Value::Array(items, _) => {
-                    let read = items.iter().filter_map(|item| self.quantity(*kind, bounds, item)).count();
-                    (read == items.len() && read > 0).then_some(Written::Other)
+                    let read: Vec<Quantity> =
+                        items.iter().filter_map(|item| self.quantity(*kind, bounds, item)).collect();
+                    (read.len() == items.len() && !read.is_empty()).then_some(Written::Quantities(read))
                 }
                 _ => self.quantity(*kind, bounds, value).map(Written::Quantity),
             },

@@ -82,12 +82,12 @@ pub(super) const DRIVE: Section = words(
             .later("the vibration table"),
             Key::new(
                 "distortion",
-                Holds::Anything,
-                "\"3 %\"",
-                "Harmonic distortion of the drive: total, or one ratio per harmonic.",
+                Holds::Quantities(Kind::Ratio, ranges::RATIO),
+                "[\"2 %\", \"1 %\"]",
+                "Harmonic distortion of the drive: the second, third … harmonic of the cell's acceleration over its fundamental, in phase with it. A single value is a total: all of it is taken as second harmonic.",
             )
             .words(&["thd", "harmonics", "harmonic-distortion"])
-            .later("distortion of the drive"),
+            .default("0 %", "judgement: none is stated; small tables make 1 to 5 % at low frequency and high level"),
             Key::new(
                 "cross-axis",
                 Holds::QuantityOrTable(Kind::Ratio, ranges::CROSS_AXIS, CROSS_AXIS),
