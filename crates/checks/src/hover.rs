@@ -2,7 +2,8 @@
 
 use crate::analysis::Analysis;
 use crate::derived::{
-    Bounce, Cushion, Derived, DriveState, DriveWindow, LayerState, Limits, Mode, Seat, SetBy, Slab,
+    Bounce, Cushion, Derived, DriveIntervals, DriveState, DriveWindow, LayerState, Limits, Mode, Seat, SetBy,
+    Slab,
 };
 use crate::rules::response_words;
 use crate::words;
@@ -66,6 +67,7 @@ fn drive(derived: &Derived) -> Option<String> {
             ),
             false => "No drive at this frequency holds everything.".to_owned(),
         });
+        lines.extend(derived.drive_intervals.as_ref().and_then(others));
         let margin =
             |name: &str, margin: Option<f64>| margin.map(|m| format!("{name} margin {}", words::percent(m)));
         let margins: Vec<String> =
@@ -78,6 +80,21 @@ fn drive(derived: &Derived) -> Option<String> {
         }
     }
     Some(lines.join("\n\n"))
+}
+
+/// The other intervals of the drive in which everything holds, where there are several.
+fn others(intervals: &DriveIntervals) -> Option<String> {
+    let others = intervals.list.iter().enumerate().filter(|(index, _)| intervals.nearest != Some(*index));
+    let texts: Vec<String> = others
+        .map(|(_, interval)| {
+            let low = words::acceleration(interval.low.acceleration);
+            match interval.high {
+                Some(high) => format!("from {low} to {}", words::acceleration(high.acceleration)),
+                None => format!("from {low} on"),
+            }
+        })
+        .collect();
+    (!texts.is_empty()).then(|| format!("It holds again {}.", words::list(&texts)))
 }
 
 /// The three quantities, each peak, rms and peak-to-peak.

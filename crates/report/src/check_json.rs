@@ -5,8 +5,8 @@ use crate::Checked;
 use crate::line::word;
 use crate::number::{json, put, put_or_null};
 use checks::derived::{
-    Bounce, BounceResponse, Cushion, Derived, FaceWedge, Limits, LostMotion, Mechanism, Mode, Response,
-    SetBy, Sideways, Slab, Validity,
+    Bounce, BounceResponse, Cushion, Derived, DriveEnd, DriveInterval, FaceWedge, Limits, LostMotion,
+    Mechanism, Mode, Response, SetBy, Sideways, Slab, Validity,
 };
 use serde_json::{Map, Value, json};
 use setup::finding::{Edit, Finding, Fix, Span};
@@ -129,6 +129,22 @@ fn results(derived: &Derived, at_rest: bool) -> Value {
         object.insert("sideways".to_owned(), self::sideways(sideways));
     }
     object.insert("validity".to_owned(), derived.validity.iter().map(validity).collect());
+    if let Some(intervals) = &derived.drive_intervals {
+        let set = derived.drive.map_or(0.0, |drive| drive.acceleration);
+        let one = |(index, interval): (usize, &DriveInterval)| {
+            let mut entry = Map::new();
+            put(&mut entry, "low_m_per_s2", interval.low.acceleration);
+            put_or_null(&mut entry, "high_m_per_s2", interval.high.map(|high| high.acceleration));
+            entry.insert("low_set_by".to_owned(), drive_end(&interval.low, derived));
+            let high = interval.high.as_ref().map_or(Value::Null, |high| drive_end(high, derived));
+            entry.insert("high_set_by".to_owned(), high);
+            entry.insert("holds_set_drive".to_owned(), json!(interval.holds(set)));
+            entry.insert("nearest".to_owned(), json!(intervals.nearest == Some(index)));
+            Value::Object(entry)
+        };
+        let list = intervals.list.iter().enumerate().map(one).collect();
+        object.insert("drive_intervals".to_owned(), list);
+    }
     let defaults = derived.defaults.iter();
     object.insert(
         "defaults".to_owned(),
@@ -143,6 +159,22 @@ fn results(derived: &Derived, at_rest: bool) -> Value {
         "effects_off".to_owned(),
         derived.effects_off.iter().map(|effect| json!(effect.name())).collect(),
     );
+    Value::Object(object)
+}
+
+/// Which slab sets an end of an interval of the drive, by what, and in which mode where that is known.
+fn drive_end(end: &DriveEnd, derived: &Derived) -> Value {
+    let mut object = Map::new();
+    if let Some(slab) = derived.slabs.get(end.slab) {
+        object.insert("slab".to_owned(), json!(slab.name));
+        if let Some(by) = &end.set_by {
+            if let Value::Object(of_mode) = mode(by, slab) {
+                object.extend(of_mode);
+            }
+            object.insert("response".to_owned(), json!(response(by.response)));
+        }
+    }
+    object.insert("mechanism".to_owned(), json!(mechanism(end.mechanism)));
     Value::Object(object)
 }
 

@@ -3,6 +3,7 @@
 mod build;
 mod figures;
 pub(crate) mod harmonics;
+mod intervals;
 mod run;
 #[cfg(test)]
 pub(crate) mod testing;
@@ -11,6 +12,8 @@ mod validity;
 mod wedge;
 mod window;
 
+#[cfg(test)]
+pub(crate) use intervals::drive_intervals;
 pub(crate) use run::{Outcome, derive};
 pub(crate) use trouble::Trouble;
 pub use validity::Validity;
@@ -51,6 +54,8 @@ pub struct Derived {
     pub bounce: Option<Bounce>,
     /// The motion that starts from rest does not reach the set drive; slabs and cushions then have no harmonics.
     pub lost_motion: Option<LostMotion>,
+    /// Every interval of the drive in which all slabs hold; `None` when a slab is not judged or nothing is driven.
+    pub drive_intervals: Option<DriveIntervals>,
     /// Defaults in force, each with its source.
     pub defaults: Vec<DefaultInForce>,
     /// What the file asks for and was not looked at.
@@ -246,6 +251,9 @@ pub struct Stability {
 pub struct Limits {
     /// Intervals in which every mode is stable, ascending; upper end `None`: none found up to `searched_up_to`.
     pub windows: Vec<(f64, Option<f64>)>,
+    /// What sets the two ends of each window, in the order of `windows`; `None`: that end is open, 0, or could not
+    /// be told.
+    pub windows_set_by: Vec<[Option<SetBy>; 2]>,
     /// Lower end of the window that holds the set value, or of the nearest; 0 when no drive is needed; without a
     /// window the acceleration at which the last mode ceases to fall; `None`: nothing up to `searched_up_to` does.
     pub hold: Option<f64>,
@@ -309,6 +317,50 @@ pub struct DriveWindow {
     pub wave_slab: Option<usize>,
     /// The set drive.
     pub set: f64,
+}
+
+/// The intervals of the drive in which every slab holds: **cell** acceleration, peak, m/s².
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct DriveIntervals {
+    /// Ascending, without overlap; empty when no drive at this frequency holds everything.
+    pub list: Vec<DriveInterval>,
+    /// Index of the one that holds the set drive, or of the nearest.
+    pub nearest: Option<usize>,
+}
+
+/// One interval of the drive.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct DriveInterval {
+    /// Where it begins.
+    pub low: DriveEnd,
+    /// Where it ends; `None`: no end found up to the largest acceleration looked at.
+    pub high: Option<DriveEnd>,
+}
+
+/// An end of an interval of the drive.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct DriveEnd {
+    /// Of the cell, peak, m/s².
+    pub acceleration: f64,
+    /// Index of the slab that sets it.
+    pub slab: usize,
+    /// What happens beyond it; none at a drive of 0.
+    pub mechanism: Mechanism,
+    /// Face and mode of that slab; `None` where nothing sets it or it could not be told.
+    pub set_by: Option<SetBy>,
+}
+
+impl DriveInterval {
+    /// Whether a drive lies in it.
+    pub fn holds(&self, set: f64) -> bool {
+        self.distance(set) == 0.0
+    }
+
+    /// From a drive to the interval, m/s²; 0 inside.
+    pub fn distance(&self, set: f64) -> f64 {
+        let above = self.high.map_or(0.0, |high| set - high.acceleration);
+        (self.low.acceleration - set).max(above).max(0.0)
+    }
 }
 
 impl DriveWindow {

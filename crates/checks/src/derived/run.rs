@@ -2,6 +2,7 @@
 
 use super::build::build;
 use super::harmonics;
+use super::intervals::drive_intervals;
 use super::trouble::Trouble;
 use super::window::drive_window;
 use super::{Cushion, Derived, DriveState, Face, Limits, Motion, Seat, SetBy, Slab, Stability};
@@ -135,6 +136,8 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     }
     outcome.derived.window = drive.and_then(|drive| drive_window(&outcome.derived.slabs, drive.acceleration));
     outcome.derived.validity = validity::statements(&outcome.derived);
+    outcome.derived.drive_intervals =
+        drive.and_then(|drive| drive_intervals(&outcome.derived.slabs, drive.acceleration));
     let pinned = setup.cell.as_ref().is_some_and(|cell| cell.pinned_line.value);
     if pinned
         && outcome.derived.slabs.iter().any(|slab| slab.seat != Seat::Floating && !slab.faces.is_empty())
@@ -226,13 +229,11 @@ fn judge(
     Some(engine.slab(&layered, &forcing, stack.cell.plan, cancel))
 }
 
+fn set_by(by: &stability::SetBy) -> SetBy {
+    SetBy { face: by.interface, wavenumber: by.wavenumber, mode: by.mode, response: by.response }
+}
+
 fn stability(found: &SlabStability, moving: bool) -> Stability {
-    let set_by = |by: &stability::SetBy| SetBy {
-        face: by.interface,
-        wavenumber: by.wavenumber,
-        mode: by.mode,
-        response: by.response,
-    };
     let worst = &found.worst;
     Stability {
         growth_rate: worst.growth.rate,
@@ -247,6 +248,11 @@ fn stability(found: &SlabStability, moving: bool) -> Stability {
         ring_down: found.ring_down,
         limits: moving.then(|| Limits {
             windows: found.windows.clone(),
+            windows_set_by: found
+                .windows_set_by
+                .iter()
+                .map(|ends| ends.each_ref().map(|by| by.as_ref().map(set_by)))
+                .collect(),
             hold: found.hold_limit,
             wave: found.wave_limit,
             hold_set_by: found.hold_set_by.as_ref().map(set_by),

@@ -42,6 +42,10 @@ pub(crate) fn windows(slab: Slab, amplification: f64, windows: &[(f64, Option<f6
             ring_down: Some(1.0),
             limits: Some(Limits {
                 windows: windows.to_vec(),
+                windows_set_by: windows
+                    .iter()
+                    .map(|_| [Some(by(1, Response::Harmonic)), Some(by(0, Response::Subharmonic))])
+                    .collect(),
                 hold: first.map(|(low, _)| low),
                 wave: first.and_then(|(_, high)| high),
                 hold_set_by: Some(by(1, Response::Harmonic)),

@@ -163,7 +163,10 @@ impl Case {
 
     fn window(&mut self) {
         let set = self.outcome.derived.drive.map(|drive| drive.acceleration);
-        self.outcome.derived.window = set.and_then(|set| drive_window(&self.outcome.derived.slabs, set));
+        let slabs = &self.outcome.derived.slabs;
+        let window = set.and_then(|set| drive_window(slabs, set));
+        let intervals = set.and_then(|set| drive_intervals(slabs, set));
+        (self.outcome.derived.window, self.outcome.derived.drive_intervals) = (window, intervals);
     }
 
     pub(crate) fn findings(&self) -> Vec<Finding> {

@@ -149,6 +149,9 @@ fn results(results: &Value, path: &Value) {
             number_or_null(value);
         });
     }
+    if let Some(intervals) = object.get("drive_intervals") {
+        drive_intervals(intervals);
+    }
     for default in list(&results["defaults"]) {
         keys(&default, &["place", "value", "source"])
             .values()
@@ -160,6 +163,32 @@ fn results(results: &Value, path: &Value) {
     list(&results["effects_off"]).iter().for_each(|effect| {
         text(effect);
     });
+}
+
+/// They ascend without overlap; the nearest is one, and where one holds the set drive it is that.
+fn drive_intervals(intervals: &Value) {
+    let intervals = list(intervals);
+    let mut last = f64::NEG_INFINITY;
+    for interval in &intervals {
+        keys(
+            interval,
+            &["low_m_per_s2", "high_m_per_s2", "low_set_by", "high_set_by", "holds_set_drive", "nearest"],
+        );
+        let low = number(&interval["low_m_per_s2"]);
+        assert!(low >= last.max(0.0), "{intervals:?}");
+        last = number_or_null(&interval["high_m_per_s2"]).unwrap_or(f64::INFINITY);
+        assert!(last > low, "{interval}");
+        assert_eq!(interval["high_set_by"].is_null(), interval["high_m_per_s2"].is_null());
+        for end in
+            [&interval["low_set_by"], &interval["high_set_by"]].into_iter().filter(|end| !end.is_null())
+        {
+            one_of(&end["mechanism"], &["falls", "waves", "none"]);
+            assert!(!text(&end["slab"]).is_empty());
+        }
+        assert!(interval["nearest"] == true || interval["holds_set_drive"] == false, "{interval}");
+    }
+    let nearest = intervals.iter().filter(|interval| interval["nearest"] == true).count();
+    assert_eq!(nearest, intervals.len().min(1));
 }
 
 fn slab(slab: &Value) {

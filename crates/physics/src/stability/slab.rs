@@ -102,6 +102,8 @@ pub struct SlabStability {
     /// Intervals of slab acceleration in which every mode is stable, ascending, m/s²; the upper end is `None` where
     /// none was found up to `searched_up_to`.
     pub windows: Vec<(f64, Option<f64>)>,
+    /// What sets the two ends of each window; `None` where it begins at no drive or is open.
+    pub windows_set_by: Vec<[Option<SetBy>; 2]>,
     /// Lower end of the window that holds the set value, or of the nearest; without a window the acceleration at
     /// which the last mode would cease to fall. 0 when no drive is needed; `None` when nothing up to
     /// `searched_up_to` holds the slab.
@@ -423,6 +425,8 @@ where
                     .map(|(i, crossing)| (crossing.acceleration, Some(self.nodes[i].set_by(&crossing)))),
             ),
         };
+        let windows_set_by =
+            windows.iter().map(|w| [w.low.as_ref().and_then(end), w.high.as_ref().and_then(end)]).collect();
         let growing: Vec<bool> = self.nodes.iter().map(|node| node.locus.growing(set) > 0).collect();
         let any = growing.contains(&true);
         let band = |f: fn(f64, f64) -> f64| {
@@ -452,6 +456,7 @@ where
                 .iter()
                 .map(|w| (w.low.as_ref().map_or(0.0, |low| low.at), w.high.as_ref().map(|high| high.at)))
                 .collect(),
+            windows_set_by,
             hold_limit: hold.map(|(a, _)| a),
             wave_limit: wave.map(|(a, _)| a),
             hold_set_by: hold.and_then(|(_, by)| by),
