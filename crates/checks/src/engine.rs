@@ -6,7 +6,7 @@ use physics::response::{
     PeriodicDrive,
 };
 use physics::stability::layered::{Forcing, Layered};
-use physics::stability::{self, Failure, SlabStability};
+use physics::stability::{self, ContactLine, Failure, SlabStability};
 use physics::stack::{Plan, Stack};
 use quantity::vocabulary::Effect;
 use std::sync::{Mutex, MutexGuard, PoisonError};
@@ -58,10 +58,11 @@ impl Engine {
         layered: &Layered,
         forcing: &Forcing,
         plan: Plan,
+        line: ContactLine,
         cancel: &(dyn Fn() -> bool + Sync),
     ) -> Result<SlabStability, Failure> {
-        once(&self.slabs, key(layered, forcing, plan), || {
-            stability::slab(layered, forcing, plan, &|| cancel())
+        once(&self.slabs, key(layered, forcing, plan, line), || {
+            stability::slab_with_line(layered, forcing, plan, line, &|| cancel())
         })
     }
 
@@ -130,8 +131,9 @@ impl Weigh for Option<Bounce> {
     }
 }
 
-fn key(layered: &Layered, forcing: &Forcing, plan: Plan) -> Key {
-    let mut numbers = vec![layered.gravity, forcing.omega, forcing.acceleration];
+fn key(layered: &Layered, forcing: &Forcing, plan: Plan, line: ContactLine) -> Key {
+    let pinned = f64::from(u8::from(line == ContactLine::Pinned));
+    let mut numbers = vec![layered.gravity, forcing.omega, forcing.acceleration, pinned];
     numbers.extend(numbers_of(plan));
     numbers.extend(&layered.tensions);
     numbers.extend(layered.layers.iter().flat_map(|layer| [layer.density, layer.viscosity, layer.thickness]));

@@ -3,7 +3,7 @@
 //! so that no correlation is in play.
 
 use setup::finding::{Finding, Severity};
-use topheavy_checks::derived::{Mechanism, Response};
+use topheavy_checks::derived::{Mechanism, Response, Slab};
 use topheavy_checks::{Analysis, Engine, Verdict, analyse, changes, hover};
 
 const FLUIDS: &str = r#"
@@ -476,9 +476,27 @@ fn a_slab_on_the_floor_needs_no_drive_to_hold() {
     let derived = analysis.derived.as_ref().expect("computed");
     assert_eq!(derived.window.expect("driven").hold, Some(0.0));
     near(derived.slabs[0].motion.expect("driven").amplification, 1.0, 1e-12);
-    // A pinned line is not looked at there.
+    // A pinned line is judged by its own modes there.
     let pinned = check(&text.replace("[cell]", "[cell]\ncontact-line = \"pinned\""));
-    assert_eq!((only(&pinned).rule, pinned.verdict), ("not-looked-at", Verdict::Incomplete));
+    assert_eq!(pinned.verdict, Verdict::Holds, "{:#?}", pinned.findings);
+    assert!(pinned.findings.is_empty());
+    let held = &pinned.derived.as_ref().expect("computed").slabs[0];
+    assert!(held.held_line && !derived.slabs[0].held_line);
+    // Its slowest mode: cos(πx/L) with k = π/L slides; held, one of two waves along the cell that is longer than
+    // its sine, 2π/L, but shorter than the free one.
+    let slowest = |slab: &Slab| slab.stability.as_ref().expect("judged").worst.wavenumber;
+    let k = std::f64::consts::PI / 0.05;
+    near(slowest(&derived.slabs[0]), k, 1e-9);
+    assert!(slowest(held) > 1.05 * k && slowest(held) < 5f64.sqrt() * k, "{}", slowest(held));
+}
+
+#[test]
+fn a_pinned_line_between_two_liquids_at_rest_is_said_to_be_taken_as_free() {
+    let text = design(50.0, &[("GLY", 8.0), ("S1000", 8.0)], 50.0, "3 g0 peak")
+        + "\n[[interface]]\nbetween = [\"oil\", \"upper oil\"]\ntension = \"26 mN/m\"\n";
+    let pinned = check(&text.replace("[cell]", "[cell]\ncontact-line = \"pinned\""));
+    let said = pinned.findings.iter().find(|finding| finding.rule == "not-looked-at").expect("said");
+    assert_eq!(said.place, "cell.contact-line");
 }
 
 #[test]

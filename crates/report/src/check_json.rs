@@ -193,6 +193,7 @@ fn slab(slab: &Slab, at_rest: bool) -> Value {
     }
     overtones(&mut object, slab);
     if let Some(stability) = &slab.stability {
+        object.insert("contact_line".to_owned(), json!(if slab.held_line { "pinned" } else { "free" }));
         put(&mut object, "growth_rate_per_s", stability.growth_rate);
         object.insert("worst".to_owned(), mode(&stability.worst, slab));
         object.insert("response".to_owned(), json!(response(stability.worst.response)));

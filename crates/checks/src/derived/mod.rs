@@ -29,6 +29,9 @@ use physics::stack::Stack;
 use quantity::vocabulary::{Effect, Phase};
 pub use setup::resolved::{DefaultInForce, NotLookedAt};
 
+/// How far a contact line can move along the wall and still be pinned, m (judgement: about as far as a meniscus flexes).
+pub(crate) const LINE_FLEXES: f64 = 1e-4;
+
 /// Everything that was computed for one setup.
 #[derive(Debug, Clone, PartialEq, Default)]
 pub struct Derived {
@@ -123,6 +126,8 @@ pub struct Slab {
     pub motion: Option<Motion>,
     /// Its interfaces, top first; indices of `Face` elsewhere point here.
     pub faces: Vec<Face>,
+    /// Whether it was judged with its contact line held: it rests in the cell and the setup says so.
+    pub held_line: bool,
     /// Every mode of the cell judged; `None` when that has no answer (a finding says why).
     pub stability: Option<Stability>,
     /// Its harmonics from the second on; `None` when the cell is at rest or they are not known.

@@ -5,12 +5,12 @@ use super::harmonics;
 use super::intervals::drive_intervals;
 use super::trouble::Trouble;
 use super::window::drive_window;
-use super::{Cushion, Derived, DriveState, Face, Limits, Motion, Seat, SetBy, Slab, Stability};
+use super::{Cushion, Derived, DriveState, Face, LINE_FLEXES, Limits, Motion, Seat, SetBy, Slab, Stability};
 use super::{validity, wedge};
 use crate::engine::Engine;
 use physics::response::{self, Chain, PeriodicDrive, SlabMotion};
 use physics::stability::layered::{Forcing, Layered};
-use physics::stability::{self, Failure, SlabStability};
+use physics::stability::{self, ContactLine, Failure, SlabStability};
 use physics::stack::{Drive, Plan, Stack};
 use quantity::vocabulary::Phase;
 use rayon::prelude::*;
@@ -71,6 +71,7 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
         }
     };
     let moving = drive.is_some();
+    let pinned = setup.cell.as_ref().is_some_and(|cell| cell.pinned_line.value);
     outcome.derived.natural_frequencies = chain.natural_frequencies.clone();
     outcome.derived.cushions = cushions(&stack, &chain, moving);
     let sideways = wedge::sideways(setup);
@@ -82,8 +83,12 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     let harmonic = periodic.as_ref().map(with);
     let judge_all = || -> Vec<_> {
         let one = |motion: &SlabMotion| {
-            let slab = slab(&stack, motion, &forced, moving);
-            let judged = judge(&stack, motion, &forced, engine, cancel);
+            let mut slab = slab(&stack, motion, &forced, moving);
+            let layered = stability::layered(&stack, motion.layers.clone());
+            slab.held_line = pinned && slab.seat != Seat::Floating && stability::is_held_at(&layered);
+            let line = if slab.held_line { ContactLine::Pinned } else { ContactLine::Free };
+            let forcing = Forcing { omega: forced.omega(), acceleration: motion.acceleration.norm() };
+            let judged = judge(&layered, &forcing, (stack.cell.plan, line), engine, cancel);
             let holds = matches!(&judged, Some(Ok(found)) if found.worst.growth.rate <= 0.0);
             let wedges = sideways
                 .filter(|_| holds)
@@ -138,19 +143,28 @@ pub(crate) fn derive(setup: &Setup, engine: &Engine, cancel: &(dyn Fn() -> bool 
     outcome.derived.validity = validity::statements(&outcome.derived);
     outcome.derived.drive_intervals =
         drive.and_then(|drive| drive_intervals(&outcome.derived.slabs, drive.acceleration));
-    let pinned = setup.cell.as_ref().is_some_and(|cell| cell.pinned_line.value);
-    if pinned
-        && outcome.derived.slabs.iter().any(|slab| slab.seat != Seat::Floating && !slab.faces.is_empty())
-    {
-        outcome.derived.not_looked_at.push(NotLookedAt {
-            check: "waves with a pinned contact line".to_owned(),
-            needs:
-                "the modes of a cell whose contact line is held; the modes of a free line are judged instead"
-                    .to_owned(),
-            place: "cell.contact-line".to_owned(),
-        });
+    if pinned {
+        outcome.derived.not_looked_at.extend(line_not_looked_at(&outcome.derived.slabs));
     }
     outcome
+}
+
+/// The slabs whose pinned line is taken as free although nothing else speaks of it.
+fn line_not_looked_at(slabs: &[Slab]) -> Option<NotLookedAt> {
+    let slides = |slab: &Slab| slab.motion.is_some_and(|motion| motion.slide > LINE_FLEXES);
+    let names: Vec<String> = slabs
+        .iter()
+        .filter(|slab| !slab.held_line && !slab.faces.is_empty())
+        .filter(|slab| slab.seat != Seat::Floating || !slides(slab))
+        .map(|slab| format!("\"{}\"", slab.name))
+        .collect();
+    (!names.is_empty()).then(|| NotLookedAt {
+        check: format!("a pinned contact line at {}", names.join(", ")),
+        needs: "the pinned modes of a slab with several faces, or a surface tension; the modes of a free line are judged \
+                instead"
+            .to_owned(),
+        place: "cell.contact-line".to_owned(),
+    })
 }
 
 fn slab(stack: &Stack, motion: &SlabMotion, drive: &Drive, moving: bool) -> Slab {
@@ -178,6 +192,7 @@ fn slab(stack: &Stack, motion: &SlabMotion, drive: &Drive, moving: bool) -> Slab
             nonlinear_acceleration: None,
         }),
         faces: faces(stack, motion.layers.clone()),
+        held_line: false,
         stability: None,
         overtones: None,
         gas_compressibility: compressibility(stack, motion.layers.clone(), omega),
@@ -212,21 +227,16 @@ fn faces(stack: &Stack, range: Range<usize>) -> Vec<Face> {
 
 /// The slab's stability; `None` where it has no interface.
 fn judge(
-    stack: &Stack,
-    motion: &SlabMotion,
-    drive: &Drive,
+    layered: &Layered,
+    forcing: &Forcing,
+    (plan, line): (Plan, ContactLine),
     engine: &Engine,
     cancel: &(dyn Fn() -> bool + Sync),
 ) -> Option<Result<SlabStability, Failure>> {
     if cancel() {
         return Some(Err(Failure::Cancelled));
     }
-    let layered: Layered = stability::layered(stack, motion.layers.clone());
-    if layered.interfaces() == 0 {
-        return None;
-    }
-    let forcing = Forcing { omega: drive.omega(), acceleration: motion.acceleration.norm() };
-    Some(engine.slab(&layered, &forcing, stack.cell.plan, cancel))
+    (layered.interfaces() > 0).then(|| engine.slab(layered, forcing, plan, line, cancel))
 }
 
 fn set_by(by: &stability::SetBy) -> SetBy {

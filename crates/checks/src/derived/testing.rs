@@ -15,6 +15,7 @@ pub(crate) fn slab(name: &str) -> Slab {
             Face { above: None, below: Some(name.to_owned()), heavier_above: false },
             Face { above: Some(name.to_owned()), below: Some("cushion".to_owned()), heavier_above: true },
         ],
+        held_line: false,
         stability: None,
         overtones: None,
         gas_compressibility: None,

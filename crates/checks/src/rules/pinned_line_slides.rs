@@ -12,12 +12,9 @@
 
 use super::Context;
 use super::context::found;
-use crate::derived::Seat;
+use crate::derived::{LINE_FLEXES, Seat};
 use crate::words;
 use setup::finding::{Edit, Finding, Fix};
-
-/// m (judgement, see the page)
-const FLEXES: f64 = 1e-4;
 
 pub(super) fn check(context: &Context<'_>) -> Vec<Finding> {
     finding(context).into_iter().collect()
@@ -32,7 +29,7 @@ fn finding(context: &Context<'_>) -> Option<Finding> {
     let (slab, slide) = slides
         .filter_map(|slab| Some((slab, slab.motion.as_ref()?.slide)))
         .max_by(|a, b| a.1.total_cmp(&b.1))
-        .filter(|(_, slide)| *slide > FLEXES)?;
+        .filter(|(_, slide)| *slide > LINE_FLEXES)?;
     let what = format!(
         "The contact line is pinned, but \"{}\" slides along the wall by {} peak in every period.",
         slab.name,

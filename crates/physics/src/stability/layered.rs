@@ -90,6 +90,12 @@ impl Layered {
         }
     }
 
+    /// The same with every tension multiplied.
+    pub(super) fn with_tension(&self, factor: f64) -> Layered {
+        let tensions = self.tensions.iter().map(|tension| factor * tension).collect();
+        Layered { tensions, ..self.clone() }
+    }
+
     /// 2νk² of the densest layer, 1/s: the scale of bulk damping.
     pub(super) fn viscous_decay(&self, wavenumber: f64) -> f64 {
         let densest = self.layers.iter().max_by(|a, b| a.density.total_cmp(&b.density));

@@ -12,6 +12,7 @@ pub mod layered;
 mod locus;
 mod modes;
 mod neutral;
+mod pinned;
 mod side_walls;
 mod slab;
 mod spectrum;
@@ -26,8 +27,9 @@ pub use failure::Failure;
 pub use from_stack::layered;
 pub use modes::{CellMode, cell_modes};
 pub use neutral::{Neutral, UnstableInterval, neutral, unstable_intervals};
+pub use pinned::{ContactLine, PinnedMode, PinnedModes, is_held_at, pinned_modes};
 pub use side_walls::{SideWalls, WallAction, Walls};
-pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab, slab_by_every_mode};
+pub use slab::{Mechanism, Mode, SetBy, SlabStability, Worst, slab, slab_by_every_mode, slab_with_line};
 
 /// Runs an expression with the number of interfaces as a constant where it is small, so that the inner loops work
 /// on matrices of fixed size.

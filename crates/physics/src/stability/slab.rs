@@ -10,7 +10,7 @@
 //! puts further modes of the cell where a curve between two neighbours, continued by the parabola through three, may reach
 //! into a window (`curves`), until between no two neighbours anything can: the cost follows the edges of the unstable band,
 //! not the number of modes. [`slab_by_every_mode`] examines each mode instead; the tests compare the two on thousands of
-//! random stacks.
+//! random stacks. The modes of a held contact line (`pinned`) lie on no such curve; each of them is examined.
 
 use super::curves::{Gap, Reaches};
 use super::exponent::{Growth, TRUNCATION, leading_of, liveliest};
@@ -18,6 +18,7 @@ use super::failure::Failure;
 use super::hill::{Hill, Meter};
 use super::layered::{Forcing, Layered, Response};
 use super::locus::{Crossing, Locus, locus};
+use super::pinned::{ContactLine, pinned_modes};
 use super::spectrum::Spectrum;
 use super::stiffness::{Size, Stiffness};
 use super::unforced;
@@ -138,7 +139,21 @@ pub fn slab(
     plan: Plan,
     cancel: &dyn Fn() -> bool,
 ) -> Result<SlabStability, Failure> {
-    judged(layered, forcing, plan, Search::WhereItMatters, cancel)
+    slab_with_line(layered, forcing, plan, ContactLine::Free, cancel)
+}
+
+/// Judges a slab as [`slab`] does, with its contact line held or not.
+///
+/// # Errors
+/// [`Failure`], as [`super::growth`].
+pub fn slab_with_line(
+    layered: &Layered,
+    forcing: &Forcing,
+    plan: Plan,
+    line: ContactLine,
+    cancel: &dyn Fn() -> bool,
+) -> Result<SlabStability, Failure> {
+    judged(layered, forcing, (plan, line), Search::WhereItMatters, cancel)
 }
 
 /// The same by examining every mode of the cell (and every mesh point of the continuum) up to the last that can
@@ -152,7 +167,7 @@ pub fn slab_by_every_mode(
     plan: Plan,
     cancel: &dyn Fn() -> bool,
 ) -> Result<SlabStability, Failure> {
-    judged(layered, forcing, plan, Search::EveryMode, cancel)
+    judged(layered, forcing, (plan, ContactLine::Free), Search::EveryMode, cancel)
 }
 
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -164,7 +179,7 @@ enum Search {
 fn judged(
     layered: &Layered,
     forcing: &Forcing,
-    plan: Plan,
+    (plan, line): (Plan, ContactLine),
     search: Search,
     cancel: &dyn Fn() -> bool,
 ) -> Result<SlabStability, Failure> {
@@ -178,7 +193,7 @@ fn judged(
             return Err(Failure::Unusable { quantity: "cell size", value: size });
         }
     }
-    super::with_size!(layered, size => Judge::new(layered, forcing, plan, size, cancel).judge(search))
+    super::with_size!(layered, size => Judge::new(layered, forcing, (plan, line), size, cancel).judge(search))
 }
 
 /// One wavenumber under examination.
@@ -265,11 +280,15 @@ where
     fn new(
         layered: &'a Layered,
         forcing: &'a Forcing,
-        plan: Plan,
+        (plan, line): (Plan, ContactLine),
         size: D,
         cancel: &'a dyn Fn() -> bool,
     ) -> Self {
-        let spectrum = Spectrum::new(plan);
+        let spectrum = match line {
+            ContactLine::Free => Spectrum::new(plan),
+            ContactLine::Pinned => pinned_modes(layered, plan, f64::INFINITY)
+                .map_or_else(|| Spectrum::new(plan), |pinned| Spectrum::pinned(plan, &pinned)),
+        };
         let averaged = forcing.omega * (2.0 * layered.gravity.max(0.0) / spectrum.first().0).sqrt();
         let up_to = (BEYOND_SET * forcing.acceleration).max(BEYOND_HOLD * averaged).max(AT_LEAST);
         let meter = Meter::up_to(MOST_BLOCKS);
@@ -279,15 +298,21 @@ where
     fn judge(mut self, search: Search) -> Result<SlabStability, Failure> {
         self.ladder()?;
         match search {
-            Search::WhereItMatters => self.refine()?,
-            Search::EveryMode => self.fill()?,
+            Search::WhereItMatters => {
+                self.fill(self.spectrum.scattered_to())?;
+                self.refine()?;
+            }
+            Search::EveryMode => self.fill(f64::INFINITY)?,
         }
         self.verdict(search)
     }
 
     fn examine(&self, (wavenumber, mode): (f64, Mode)) -> Result<Node<D>, Failure> {
         self.alive()?;
-        let stiffness = Stiffness::new(self.layered, wavenumber, self.size);
+        let stiffness = match self.spectrum.stiffening(wavenumber) {
+            1.0 => Stiffness::new(self.layered, wavenumber, self.size),
+            stiffening => Stiffness::new(&self.layered.with_tension(stiffening), wavenumber, self.size),
+        };
         let hill = Hill::new(stiffness, self.forcing.omega, self.up_to, TRUNCATION, self.meter.clone());
         let locus = locus(&hill, self.up_to, wavenumber)?;
         Ok(Node { wavenumber, mode, hill, locus, growth: None })
@@ -363,10 +388,10 @@ where
         Gap { before: i.checked_sub(1).and_then(at), low, high, after: at(i + 2) }.may_matter(reaches)
     }
 
-    /// Puts every mode.
-    fn fill(&mut self) -> Result<(), Failure> {
+    /// Puts every mode up to a wavenumber.
+    fn fill(&mut self, up_to: f64) -> Result<(), Failure> {
         let mut i = 0;
-        while i + 1 < self.nodes.len() {
+        while i + 1 < self.nodes.len() && self.nodes[i].wavenumber < up_to {
             let (low, high) = (self.nodes[i].wavenumber, self.nodes[i + 1].wavenumber);
             match self.spectrum.between(low, high) {
                 Some(next) => {

@@ -1,6 +1,7 @@
 //! The wavenumbers that a cell offers: its modes one by one as far as they can be told apart, a continuum beyond.
 
 use super::modes::cell_modes;
+use super::pinned::PinnedModes;
 use super::slab::Mode;
 use crate::stack::Plan;
 
@@ -18,14 +19,37 @@ pub(super) struct Spectrum {
     listed: f64,
     /// Whether the list is full, so that the continuum begins where it ends.
     full: bool,
+    /// With a held contact line, what multiplies the tension in each mode; empty otherwise.
+    stiffening: Vec<f64>,
 }
 
 impl Spectrum {
     pub fn new(plan: Plan) -> Spectrum {
         let first = cell_modes(plan, f64::INFINITY, 1)[0];
-        let mut spectrum = Spectrum { plan, modes: Vec::new(), listed: 0.0, full: false };
+        let mut spectrum =
+            Spectrum { plan, modes: Vec::new(), listed: 0.0, full: false, stiffening: Vec::new() };
         spectrum.list(4.0 * first.wavenumber);
         spectrum
+    }
+
+    /// The modes of a held contact line as far as they are known, and a continuum of free waves beyond.
+    pub fn pinned(plan: Plan, pinned: &PinnedModes) -> Spectrum {
+        let modes: Vec<_> = pinned.modes.iter().map(|m| (m.wavenumber, Mode::Cell(m.indices))).collect();
+        let listed = modes.last().map_or(0.0, |last| last.0);
+        let stiffening = pinned.modes.iter().map(|mode| mode.stiffening).collect();
+        Spectrum { plan, modes, listed, full: true, stiffening }
+    }
+
+    /// What multiplies the tension in the mode of this wavenumber: 1, but for a held contact line.
+    pub fn stiffening(&self, wavenumber: f64) -> f64 {
+        let at = self.modes.partition_point(|mode| mode.0 < wavenumber);
+        let listed = self.modes.get(at).is_some_and(|mode| mode.0 == wavenumber);
+        self.stiffening.get(at).filter(|_| listed).copied().unwrap_or(1.0)
+    }
+
+    /// Up to here neighbouring modes lie on no common curve of the wavenumber, so that each has to be looked at, 1/m.
+    pub fn scattered_to(&self) -> f64 {
+        if self.stiffening.is_empty() { 0.0 } else { self.listed }
     }
 
     /// The longest wave.
