@@ -56,9 +56,29 @@ impl Analysis {
 }
 
 /// Checks a text: reads it, computes what it describes, and asks every rule. When `cancel` says that the result is
-/// no longer wanted the work ends early, with what was found so far.
+/// no longer wanted the work ends early, with what was found so far: nothing, if the text was still being read.
 pub fn analyse(text: &str, engine: &Engine, cancel: &(dyn Fn() -> bool + Sync)) -> Analysis {
-    let understanding = setup::understand(text);
+    match setup::understand_unless(text, &|| cancel()) {
+        Some(understanding) => judged(understanding, engine, cancel),
+        None => Analysis {
+            findings: Vec::new(),
+            verdict: Verdict::Incomplete,
+            understanding: setup::understand(""),
+            derived: None,
+        },
+    }
+}
+
+/// What a text says, and what is wrong with it, without computing anything.
+pub fn read(text: &str) -> Analysis {
+    judged(setup::understand(text), &Engine::new(), &|| true)
+}
+
+fn judged(
+    understanding: setup::Understanding,
+    engine: &Engine,
+    cancel: &(dyn Fn() -> bool + Sync),
+) -> Analysis {
     let setup = &understanding.setup;
     let mut findings = understanding.findings.clone();
     let outcome = computed(setup, engine, cancel, &mut findings);

@@ -13,7 +13,7 @@ mod limits;
 mod rules;
 mod words;
 
-pub use analysis::{Analysis, Verdict, analyse};
+pub use analysis::{Analysis, Verdict, analyse, read};
 pub use cache::{Bounds, Usage};
 pub use changes::{changes, offer};
 pub use derived::Derived;

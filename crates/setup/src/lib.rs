@@ -6,6 +6,7 @@
 pub mod declare;
 pub mod edit;
 pub mod finding;
+mod interrupt;
 pub mod lines;
 mod places;
 mod reader;
@@ -23,6 +24,7 @@ pub use rules::RULES;
 pub use rules::file_not_readable::{Cause, LARGEST_FILE, file_not_readable, text_of};
 
 use finding::Finding;
+use interrupt::Interrupt;
 
 /// What came of reading one setup file.
 #[derive(Debug, Clone, PartialEq)]
@@ -40,8 +42,22 @@ pub struct Understanding {
 /// Reads a setup file, whatever it holds: text → tree → as written → resolved. Never fails; what is wrong is among
 /// the findings.
 pub fn understand(text: &str) -> Understanding {
-    let reading = read(text);
-    let mut document = written::walk(text, &reading);
+    let wanted = Interrupt::never();
+    let reading = reader::read_unless(text, &wanted);
+    let document = written::walk(text, &reading, &wanted);
+    resolved(text, reading, document)
+}
+
+/// The same, given up (`None`) soon after `cancel` says that it is no longer wanted: a statement is the most that is
+/// read in between.
+pub fn understand_unless(text: &str, cancel: &dyn Fn() -> bool) -> Option<Understanding> {
+    let interrupt = Interrupt::by(cancel);
+    let reading = reader::read_unless(text, &interrupt);
+    let document = (!interrupt.is_due()).then(|| written::walk(text, &reading, &interrupt))?;
+    (!interrupt.is_due()).then(|| resolved(text, reading, document))
+}
+
+fn resolved(text: &str, reading: tree::Reading, mut document: written::Document) -> Understanding {
     let (setup, found) = resolve::resolve(text, &document);
     let mut findings = std::mem::take(&mut document.findings);
     findings.extend(found);

@@ -34,8 +34,6 @@ pub(crate) struct Session {
     encoding: Arc<OnceLock<Encoding>>,
     world: watch::Receiver<Arc<World>>,
     results: watch::Receiver<Results>,
-    engine: Arc<Engine>,
-    analyse: Analyse,
 }
 
 impl Session {
@@ -55,9 +53,9 @@ impl Session {
                 log.log_message(MessageType::WARNING, complaint).await;
             }
         });
-        let (desk, results) = Desk::new(client, world.clone(), ability.clone(), engine.clone(), analyse);
+        let (desk, results) = Desk::new(client, world.clone(), ability.clone(), engine, analyse);
         tokio::spawn(desk.work());
-        Session { ability, encoding, world, results, engine, analyse }
+        Session { ability, encoding, world, results }
     }
 
     fn ability(&self) -> Ability {
@@ -151,9 +149,9 @@ impl LanguageServer for Session {
 }
 
 impl Session {
-    /// What can be told without computing: a check that is cancelled before it begins. `None` when it falls over.
+    /// What can be told without computing. `None` when it falls over.
     async fn words_only(&self, document: &Arc<Document>) -> Option<Analysis> {
-        let (document, engine, analyse) = (document.clone(), self.engine.clone(), self.analyse);
-        tokio::task::spawn_blocking(move || analyse(&document.text, &engine, &|| true)).await.ok()
+        let document = document.clone();
+        tokio::task::spawn_blocking(move || checks::read(&document.text)).await.ok()
     }
 }

@@ -21,6 +21,7 @@ mod parse;
 mod statements;
 
 use crate::finding::Span;
+use crate::interrupt::Interrupt;
 use crate::tree::{Reading, Slip, SlipKind};
 use explain::Explained;
 use merge::{Clash, Merge, NodeId, ROOT};
@@ -33,10 +34,17 @@ const MOST_SLIPS: usize = 200;
 
 /// Reads a text, whatever it holds.
 pub fn read(text: &str) -> Reading {
+    read_unless(text, &Interrupt::never())
+}
+
+/// The same; what has been read when the interrupt is due is of no use.
+pub(crate) fn read_unless(text: &str, interrupt: &Interrupt) -> Reading {
     let mut reader = Reader::new(text);
     let mut statements = Statements::new(text);
     let mut pieces = Vec::new();
-    while let Some(mut statement) = statements.next() {
+    while !interrupt.is_due()
+        && let Some(mut statement) = statements.next()
+    {
         let mut parsed = reader.parse(&statement);
         if parsed.is_err()
             && let Some(shorter) = statements.cut_short(&statement)
@@ -50,6 +58,9 @@ pub fn read(text: &str) -> Reading {
         pieces.push((statement, parsed));
     }
     for (statement, parsed) in pieces {
+        if interrupt.is_due() {
+            break;
+        }
         match parsed {
             Ok(Parsed::Header { path, span, repeated }) => reader.header(&statement, &path, &span, repeated),
             Ok(Parsed::Pair { path, value }) => reader.pair(&statement, &path, value),

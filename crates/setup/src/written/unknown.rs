@@ -66,6 +66,9 @@ fn unknown_key(walk: &mut Walk, path: &str, keys: &'static [Key], place: &str, t
 /// Reports the keys that belong to another section. What they would have set there is unreadable, not missing.
 pub(super) fn settle(walk: &mut Walk, root: &Table) {
     for misplaced in std::mem::take(&mut walk.misplaced) {
+        if walk.interrupt.is_due() {
+            break;
+        }
         let key = misplaced.key.as_str();
         for home in &misplaced.homes {
             let sections: Vec<_> = walk.document.sections(home.path).collect();

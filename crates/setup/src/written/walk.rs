@@ -3,6 +3,7 @@
 use super::{Document, Written, WrittenEntry, WrittenSection, folded, join, lost, unknown, value};
 use crate::declare::{self, Attention, Form, Holds, Section};
 use crate::finding::Span;
+use crate::interrupt::Interrupt;
 use crate::places::Spot;
 use crate::resolved::NotLookedAt;
 use crate::rules;
@@ -12,10 +13,11 @@ use std::collections::BTreeMap;
 /// More layers than this are refused: no stack has them, and every one costs time.
 pub(crate) const MOST_LAYERS: usize = 200;
 
-/// Reads everything that is declared.
-pub(crate) fn walk(text: &str, reading: &Reading) -> Document {
+/// Reads everything that is declared; what is there when the interrupt is due is of no use.
+pub(crate) fn walk(text: &str, reading: &Reading, interrupt: &Interrupt) -> Document {
     let mut walk = Walk {
         text,
+        interrupt,
         headers: headers(text, &reading.root),
         names: BTreeMap::new(),
         misplaced: Vec::new(),
@@ -31,6 +33,7 @@ pub(crate) fn walk(text: &str, reading: &Reading) -> Document {
 
 pub(super) struct Walk<'a> {
     pub text: &'a str,
+    pub interrupt: &'a Interrupt<'a>,
     /// Starts of all headers, ascending.
     pub headers: Vec<usize>,
     /// How often a place was used already, for equal names.
@@ -75,6 +78,9 @@ impl Walk<'_> {
             entries: Vec::new(),
         };
         for entry in &table.entries {
+            if self.interrupt.is_due() {
+                break;
+            }
             if root.key(&entry.key).is_some() {
                 self.key(root, "", entry, &mut written);
             } else if let Some(section) =
@@ -195,6 +201,9 @@ impl Walk<'_> {
             entries: Vec::new(),
         };
         for inner in &table.entries {
+            if self.interrupt.is_due() {
+                break;
+            }
             let below = join(section.path, &inner.key);
             if section.key(&inner.key).is_some() {
                 self.key(section, &place, inner, &mut written);
