@@ -9,4 +9,5 @@ pub mod questions;
 pub mod references;
 pub mod runge_kutta;
 pub mod stacks;
+pub mod textbook;
 pub mod tongues;
