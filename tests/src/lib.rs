@@ -8,6 +8,7 @@ pub mod pistons;
 pub mod questions;
 pub mod references;
 pub mod runge_kutta;
+pub mod sample;
 pub mod stacks;
 pub mod textbook;
 pub mod tongues;
