@@ -15,7 +15,7 @@ use std::process::Command;
 use topheavy_tests::sample::two_slabs;
 
 /// Ceiling for the full check of two slabs, millions of instructions. Lower it when the solver gets faster.
-const MOST_FOR_TWO_SLABS: f64 = 4200.0;
+const MOST_FOR_TWO_SLABS: f64 = 2900.0;
 /// Widths of a cell at 150 Hz, m: four times the modes from one to the next.
 const WIDTHS: [f64; 3] = [0.05, 0.1, 0.2];
 /// Four times the modes may cost this many times as much.

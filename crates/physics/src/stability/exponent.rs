@@ -105,17 +105,26 @@ where
     );
     let locus = locus(&hill, forcing.acceleration, k)?;
     let hints = unforced::hints(&hill.stiffness, layered.viscous_decay(k));
-    leading_of(&hill, &hints, &locus, forcing.acceleration, k, cancel)
+    leading_of(&hill, &hints, &locus, forcing.acceleration, k, (Care::Thorough, cancel))
 }
 
-/// The same with everything prepared, for callers that ask for many accelerations.
+/// How a decaying mode is looked for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Care {
+    /// Where the loci point to, which is enough to compare modes.
+    AsEstimated,
+    /// Everywhere: overdamped modes and those among vorticity modes may be slower than what the loci point to.
+    Thorough,
+}
+
+/// The same with everything prepared, for callers that ask for many modes.
 pub(super) fn leading_of<D: Size>(
     hill: &Hill<D>,
     hints: &[Complex64],
     locus: &Locus,
     a: f64,
     k: f64,
-    cancel: &dyn Fn() -> bool,
+    (care, cancel): (Care, &dyn Fn() -> bool),
 ) -> Result<Growth, Failure>
 where
     DefaultAllocator: Allocator<D, D> + Allocator<D>,
@@ -142,7 +151,11 @@ where
         }
     } else {
         starts.truncate(2 * (hints.len() + 1));
-        search.least_damped_as_estimated(&starts).or_else(|| {
+        let estimated = match care {
+            Care::AsEstimated => search.least_damped_as_estimated(&starts),
+            Care::Thorough => None,
+        };
+        estimated.or_else(|| {
             // Where estimates mislead: from the axis beside them, from the modes at rest, and from all along the axis.
             let beside: Vec<Complex64> = starts.iter().map(|start| Complex64::new(0.0, start.im)).collect();
             starts.extend(beside);

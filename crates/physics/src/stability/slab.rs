@@ -13,7 +13,7 @@
 //! random stacks. The modes of a held contact line (`pinned`) lie on no such curve; each of them is examined.
 
 use super::curves::{Gap, Reaches};
-use super::exponent::{Growth, TRUNCATION, leading_of, liveliest};
+use super::exponent::{Care, Growth, TRUNCATION, leading_of, liveliest};
 use super::failure::Failure;
 use super::hill::{Hill, Meter};
 use super::layered::{Forcing, Layered, Response};
@@ -250,10 +250,20 @@ where
         if let Some(growth) = self.growth {
             return Ok(growth);
         }
-        let hints = unforced::hints(&self.hill.stiffness, layered.viscous_decay(self.wavenumber));
-        let growth = leading_of(&self.hill, &hints, &self.locus, a, self.wavenumber, cancel)?;
+        let growth = self.exponent(layered, a, Care::AsEstimated, cancel)?;
         self.growth = Some(growth);
         Ok(growth)
+    }
+
+    fn exponent(
+        &self,
+        layered: &Layered,
+        a: f64,
+        care: Care,
+        cancel: &dyn Fn() -> bool,
+    ) -> Result<Growth, Failure> {
+        let hints = unforced::hints(&self.hill.stiffness, layered.viscous_decay(self.wavenumber));
+        leading_of(&self.hill, &hints, &self.locus, a, self.wavenumber, (care, cancel))
     }
 }
 
@@ -555,7 +565,18 @@ where
                 }
             }
         }
-        let growth = self.nodes[at].leading(self.layered, set, self.cancel)?;
+        let mut growth = self.nodes[at].leading(self.layered, set, self.cancel)?;
+        if !any_grows {
+            // The longest wave and the best are looked at with care.
+            for i in [0, at] {
+                let thorough = self.nodes[i].exponent(self.layered, set, Care::Thorough, self.cancel);
+                match thorough {
+                    Ok(found) if found.rate > growth.rate => (at, growth) = (i, found),
+                    Err(Failure::Cancelled) => return Err(Failure::Cancelled),
+                    _ => {}
+                }
+            }
+        }
         Ok(Worst { wavenumber: self.nodes[at].wavenumber, mode: self.nodes[at].mode, growth })
     }
 
