@@ -18,7 +18,7 @@ pub const SLABS: Bounds = Bounds { entries: 512, bytes: 2 << 20 };
 /// Motions of a stack and what is known of their bounce: one each a keystroke, some kilobytes a motion.
 pub const MOTIONS: Bounds = Bounds { entries: 128, bytes: 2 << 20 };
 
-/// Caches of the solvers. Keys are resolved values, never text; each is bounded ([`SLABS`], [`MOTIONS`]); shared between threads.
+/// Caches of the solvers. Keys are resolved values, never text; each is bounded ([`SLABS`], `MOTIONS`); shared between threads.
 /// Nothing else of a check outlives it.
 #[derive(Debug)]
 pub struct Engine {

@@ -64,7 +64,7 @@ impl Second {
         modes.iter().map(|mode| interface_share(&self.motion, &monodromy, mode, self.omega)).collect()
     }
 
-    /// The periodic motion under a sideways force per mass `push(ωt)` at an acceleration: see [`pushed`].
+    /// The periodic motion under a sideways force per mass `push(ωt)` at an acceleration: see [`pushed()`].
     pub fn pushed(&self, acceleration: f64, push: &dyn Fn(f64) -> f64) -> Pushed {
         pushed(&self.motion, &Forcing { omega: self.omega, acceleration }, self.steps, push)
     }

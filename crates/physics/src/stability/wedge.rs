@@ -20,7 +20,7 @@
 //! circle, radius R:             J₁′(z) = 0, k = z/R,  2/(z² − 1)  and  8/(z² (z² − 1))
 //! ```
 //!
-//! (the mean slope is that of the line of least squares; both sums are 1.) High modes beyond [`MODES`] take the gain
+//! (the mean slope is that of the line of least squares; both sums are 1.) High modes beyond `MODES` take the gain
 //! of the last. Singular where a harmonic mode is marginal, which is the hold limit of the mode.
 //!
 //! Source: derived here. Range: linear, |slope| ≪ 1. Accuracy: 1e-8 for a mode; the sum over modes as its evidence says.
