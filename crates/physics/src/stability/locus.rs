@@ -24,6 +24,12 @@
 //! tongue. What has to be resolved is which locus is which where two pass close by: a piece is halved until the
 //! matching of its ends is beyond doubt, or does not matter because all of them lie on the same side of the axis;
 //! and until the imaginary part of each follows a parabola through three samples that decides whether it has a zero.
+//!
+//! # What is not sure yet
+//! A locus so steep that it runs through the whole range of drives between two samples is judged by its ends, which lie
+//! outside. In nearly inviscid liquids (below about 10⁻⁹ m²/s, a thousandth of water's viscosity) *combination* tongues
+//! narrower than about a hundredth of their drive have been seen to be missed that way; harmonic and subharmonic ones of
+//! any width tried (10⁻² to 10⁻⁸) were found.
 
 use super::eigenvalues::eigenvalues;
 use super::failure::Failure;
